@@ -1,0 +1,37 @@
+import { rateLimit, type RateLimitRequestHandler } from 'express-rate-limit'
+import type { Request } from 'express'
+import { problemDetails } from '../middleware/problems'
+
+const minutes = 60_000
+
+function accountOf(req: Request): string {
+  const body: unknown = req.body
+  const email = typeof body === 'object' && body !== null && 'email' in body ? body.email : ''
+  return String(email).trim().toLowerCase().slice(0, 200)
+}
+
+function limit(name: string, tries: number, key: (req: Request) => string): RateLimitRequestHandler {
+  return rateLimit({
+    windowMs: 15 * minutes,
+    limit: tries,
+    identifier: name,
+    standardHeaders: 'draft-8',
+    legacyHeaders: false,
+    skipSuccessfulRequests: true,
+    keyGenerator: key,
+    validate: { keyGeneratorIpFallback: false },
+    handler: (_req, res) => {
+      res.status(429).type('application/problem+json').json(problemDetails('request.too_many'))
+    },
+  })
+}
+
+/**
+ * Failed sign-ins: ten a quarter of an hour for one account from one address, as the connection shows it, whatever
+ * a header claims. A guesser at another address cannot lock the owner out.
+ */
+export const signInLimit = () =>
+  limit('sign-in', 10, (req) => `${accountOf(req)} ${req.socket.remoteAddress ?? ''}`)
+
+/** Failed tries of links and set-up codes: thirty a quarter of an hour from one address. */
+export const secretLimit = () => limit('secret', 30, (req) => req.socket.remoteAddress ?? '')

@@ -1,0 +1,6 @@
+export * from './shops'
+export * from './people'
+export * from './things'
+export * from './renters'
+export * from './fittings'
+export * from './afterwards'

@@ -1,0 +1,9 @@
+import { getBoard, getBoardSince } from '#shared/api/board'
+import { boardSnapshot } from '../db/queries/board'
+import { boardSince } from '../services/board'
+import { answers, type Route } from './route'
+
+export const boardRoutes: Route[] = [
+  answers(getBoard, (deps, actor) => boardSnapshot(deps.db, actor.shopId, deps.now())),
+  answers(getBoardSince, (deps, actor, { params }) => boardSince(deps, actor.shopId, params.seq)),
+]

@@ -1,0 +1,14 @@
+import { z } from 'zod'
+import { boardCatchUp, boardSnapshot } from '#shared/schemas/board'
+import { read } from './define'
+
+/** The whole board. */
+export const getBoard = read({ path: '/api/board', access: 'board.read', answer: boardSnapshot })
+
+/** What happened after a number: events, or a snapshot when they are gone. */
+export const getBoardSince = read({
+  path: '/api/board/since/:seq',
+  access: 'board.read',
+  params: z.object({ seq: z.coerce.number().int().min(0) }),
+  answer: boardCatchUp,
+})
