@@ -68,8 +68,3 @@ export function parseTyped(text: string): ParsedTyped {
   if (label.ok) return { ...label, checked: true }
   return { ok: false, reason: label.reason === 'unfinished' ? 'unfinished' : 'not_ours' }
 }
-
-/** The other ski of the pair, or the other boot. */
-export function otherSide(side: LabelSide): LabelSide {
-  return side === 'left' ? 'right' : 'left'
-}

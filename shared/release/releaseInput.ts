@@ -6,7 +6,7 @@ import { editionNames } from './selectionTable'
 const { age, soleLengthMm } = inputLimits
 
 export const skierTypeSchema = z.enum(skierTypes)
-export const requestSchema = z.union([z.literal(-1), z.literal(0), z.literal(1)])
+export const requestSchema = z.literal([-1, 0, 1])
 export const editionSchema = z.enum(editionNames)
 
 /** Everything that a release value depends on. Request: -1 is one row lower, +1 one row higher. */
