@@ -19,5 +19,11 @@ export function invalidInputOf(error: z.ZodError): InvalidInput {
   const path = issue.path.map((part) => (typeof part === 'number' ? part : String(part)))
   if (issue.code === 'unrecognized_keys')
     return invalidInput([...path, ...issue.keys.slice(0, 1)], 'unknown key')
-  return invalidInput(path, issue.message.replace(/^Invalid input: /, '').replace(/^Invalid /, 'unknown '))
+  return invalidInput(path, plainWords(issue.message))
+}
+
+/** The schema library's own sentence without its verdict in front: 'expected number, received null'. */
+function plainWords(message: string): string {
+  const words = message.replace(/^Invalid [a-z ]+[:.] /, '')
+  return words.charAt(0).toLowerCase() + words.slice(1)
 }

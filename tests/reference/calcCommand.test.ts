@@ -96,6 +96,7 @@ describe('npm run calc', { timeout: 30_000 }, () => {
       invalid('__proto__'),
       releaseExamples.lines[0]?.out,
     ])
+    expect(answers[8]).toMatchObject({ message: "expected 'kg' | 'lb' | 'st-lb'" })
     expect(status).toBe(0)
   })
 
