@@ -44,7 +44,8 @@ CREATE TABLE "setup_codes" (
 --> statement-breakpoint
 CREATE TABLE "shop_sequences" (
 	"shop_id" uuid PRIMARY KEY NOT NULL,
-	"seq" bigint DEFAULT 0 NOT NULL
+	"seq" bigint DEFAULT 0 NOT NULL,
+	"last_fitting_number" integer DEFAULT 0 NOT NULL
 );
 --> statement-breakpoint
 CREATE TABLE "shop_texts" (

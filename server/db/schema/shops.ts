@@ -37,6 +37,8 @@ export const shopSequences = pgTable('shop_sequences', {
     .primaryKey()
     .references(() => shops.id),
   seq: sequence().notNull().default(0),
+  /** The last fitting number given out; numbers may have holes, the sequence may not. */
+  lastFittingNumber: integer().notNull().default(0),
 })
 
 export const sites = pgTable(
