@@ -14,6 +14,8 @@ export interface Deps {
   sessionSecret: string
   /** Cookies only over TLS. */
   secure: boolean
+  /** The demo shop on loopback: the sign-in page may show its invented sign-ins. */
+  demo: boolean
   /** Origins that may change anything; the request's own host is always one of them. */
   origins: string[]
   /** Tells every screen of the shop; called after commit. */

@@ -14,6 +14,7 @@ export interface ServerOptions {
   port: number
   sessionSecret: string
   secure: boolean
+  demo: boolean
   origins: string[]
   clientDir: string | null
   logLevel: string
@@ -39,6 +40,7 @@ export async function startServer(options: ServerOptions): Promise<RunningServer
     now: options.now ?? (() => new Date()),
     sessionSecret: options.sessionSecret,
     secure: options.secure,
+    demo: options.demo,
     origins: options.origins,
     clientDir: options.clientDir,
     publish: (shopId, event) => live.publish?.(shopId, event),
