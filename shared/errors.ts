@@ -43,6 +43,7 @@ export const problems = {
   'items.held': 409,
   'items.code_taken': 409,
   'items.changed': 409,
+  'items.reason': 422,
 
   'labels.unknown': 404,
   'labels.taken': 409,
@@ -50,8 +51,17 @@ export const problems = {
   'models.not_approved': 409,
   'models.in_use': 409,
   'models.name_taken': 409,
+  'models.geometry': 422,
+  'models.sheet_unfinished': 422,
 
-  'renters.unfinished': 422,
+  'forms.sent': 409,
+  'forms.period': 422,
+  'rentals.taken': 409,
+  'rentals.state': 409,
+  'ownBoots.same_person': 409,
+
+  'renters.request_not_allowed': 422,
+  'renters.unsigned': 422,
   'renters.guardian': 422,
   'renters.changed': 409,
 

@@ -1,0 +1,66 @@
+import { and, eq } from 'drizzle-orm'
+import type { changeBoots, createBoots } from '#shared/api/boots'
+import type { BodyOf, IdsOf } from '#shared/api/define'
+import { labelFor } from '#shared/labels/labels'
+import { boots, labels, sites } from '../db/schema/schema'
+import type { Tx } from '../deps'
+import { isDuplicate, Problem } from '../errors'
+import type { PersonActor } from './actor'
+import type { Service } from './commands'
+import { doubtFittings } from './doubt'
+import { changedFields, noteOfficeChange } from './office'
+
+type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
+
+async function requireOwnSite(tx: Tx, shopId: string, siteId: string) {
+  if (!(await tx.$count(sites, and(eq(sites.id, siteId), eq(sites.shopId, shopId)))))
+    throw new Problem('items.unknown')
+}
+
+export const createBootsService: Does<typeof createBoots> = async (context, body) => {
+  const { tx, actor } = context
+  const { shopId } = actor
+  await requireOwnSite(tx, shopId, body.homeSiteId)
+  try {
+    const [row] = await tx
+      .insert(boots)
+      .values({ ...body, shopId, siteId: body.homeSiteId, stateSince: context.occurredAt })
+      .returning({ id: boots.id })
+    const bootsId = row!.id
+    for (const side of ['left', 'right'] as const) {
+      await tx
+        .insert(labels)
+        .values({ shopId, text: labelFor(body.code, side), itemKind: 'boots', itemId: bootsId, side })
+    }
+    await noteOfficeChange(context, 'boots.create', bootsId, Object.keys(body))
+    context.touchItem('boots', bootsId)
+    return { bootsId }
+  } catch (error) {
+    if (isDuplicate(error, 'boots_code') || isDuplicate(error, 'labels_text')) {
+      throw new Problem('items.code_taken', { code: body.code })
+    }
+    throw error
+  }
+}
+
+export const changeBootsService: Does<typeof changeBoots> = async (context, { id, version, ...values }) => {
+  const { tx, actor } = context
+  const [before] = await tx
+    .select()
+    .from(boots)
+    .where(and(eq(boots.id, id), eq(boots.shopId, actor.shopId)))
+    .for('update')
+  if (!before) throw new Problem('items.unknown')
+  if (before.version !== version) throw new Problem('items.changed')
+  await requireOwnSite(tx, actor.shopId, values.homeSiteId)
+  await tx
+    .update(boots)
+    .set({ ...values, version: version + 1 })
+    .where(eq(boots.id, id))
+  await noteOfficeChange(context, 'boots.change', id, changedFields(before, values))
+  if (values.soleLengthMm !== before.soleLengthMm || values.soleType !== before.soleType) {
+    await doubtFittings(context, { bootsId: id }, 'sole_changed')
+  }
+  context.touchItem('boots', id)
+  return { bootsId: id }
+}
