@@ -1,8 +1,17 @@
-import { randomUUID } from 'node:crypto'
+import { createHash, randomUUID } from 'node:crypto'
 import type { Role } from '#shared/permissions'
-import { devices, memberships, people } from '../../server/db/schema/schema'
+import {
+  devices,
+  memberships,
+  people,
+  shops,
+  shopSequences,
+  shopTexts,
+  sites,
+} from '../../server/db/schema/schema'
 import { hashSecret } from '../../server/auth/passwords'
 import { newToken, tokenHash } from '../../server/auth/tokens'
+import { defaultTexts } from '../../server/services/defaultTexts'
 import type { TestDatabase } from './database'
 
 /** One person a role, and a second one where two of a kind are needed. All invented. */
@@ -27,18 +36,48 @@ function hashOnce(secret: string): Promise<string> {
   return known
 }
 
+/** A shop with two sites and the product's own texts, and nobody in it yet. */
+export async function addShop(db: TestDatabase['db'], name = 'Tarnside Hire') {
+  const [shopId, lower, square] = [randomUUID(), randomUUID(), randomUUID()]
+  await db.insert(shops).values({ id: shopId, name, zone: 'Europe/Vienna' })
+  await db.insert(shopSequences).values({ shopId })
+  await db.insert(shopTexts).values(
+    defaultTexts().map((text) => ({
+      ...text,
+      shopId,
+      version: 1,
+      sha256: createHash('sha256').update(text.body, 'utf8').digest('hex'),
+    })),
+  )
+  await db.insert(sites).values([
+    { id: lower, shopId, name: 'Lower Lift' },
+    { id: square, shopId, name: 'Village Square' },
+  ])
+  return { shopId, siteIds: [lower, square] as const }
+}
+
+/** Somebody of a shop who can sign in with the tests' password, and sign with the PIN when one is given. */
+export async function addPerson(
+  db: TestDatabase['db'],
+  shopId: string,
+  held: readonly Role[],
+  { name = 'Somebody', pin }: { name?: string; pin?: string } = {},
+) {
+  const personId = randomUUID()
+  const email = `${held.join('-')}-${personId.slice(0, 8)}@shop.test`
+  await db.insert(people).values({ id: personId, email, name, passwordHash: await hashOnce(testPassword) })
+  await db
+    .insert(memberships)
+    .values({ shopId, personId, roles: [...held], pinHash: pin ? await hashOnce(pin) : null })
+  return { personId, email }
+}
+
 /** The staff of a shop with passwords and PINs: person ids and e-mail addresses by role. */
 export async function addStaff(db: TestDatabase['db'], shopId: string) {
-  const passwordHash = await hashOnce(testPassword)
   const made = {} as Record<Who, { id: string; email: string; name: string; pin: string }>
   for (const [who, { name, roles, pin }] of Object.entries(staff) as [Who, (typeof staff)[Who]][]) {
-    const id = randomUUID()
-    const email = `${who}-${id.slice(0, 8)}@shop.test`
-    await db.insert(people).values({ id, email, name, passwordHash })
-    await db
-      .insert(memberships)
-      .values({ shopId, personId: id, roles: [...roles], pinHash: await hashOnce(pin) })
-    made[who] = { id, email, name, pin }
+    const { personId, email } = await addPerson(db, shopId, roles, { name, pin })
+    made[who] = { id: personId, email, name, pin }
   }
   return made
 }
