@@ -12,6 +12,7 @@ import type { Deps } from '../deps'
 import type { Actor, LinkActor, PersonActor } from '../services/actor'
 import { runCommand, type Service } from '../services/commands'
 import { actorOf } from '../middleware/access'
+import { provePin } from '../services/pins'
 
 /** One route as the application mounts it, the OpenAPI document describes it, and the test of roles walks it. */
 export interface Route {
@@ -27,12 +28,28 @@ export interface Route {
 
 type ActorFor<A extends Access> = A extends 'link' ? LinkActor : A extends 'open' ? Actor | null : PersonActor
 
+/**
+ * Whose PIN must come with a command: the person's id, or null where this body needs none. It is proved before the
+ * command's transaction begins, so that a wrong try is counted whatever becomes of the command; the service then
+ * asks `requirePin`.
+ */
+export type SignedBy<Body> = (body: Body, actor: PersonActor) => string | null
+
+/** For commands that whoever acts signs with their own PIN. */
+export const byOwnPin: SignedBy<unknown> = (_body, actor) => actor.personId
+
 /** The route of a command: parse the envelope, run the service once, answer its ids and event. */
 export function does<Body, Ids>(
   definition: Command<string, Body, Ids>,
   service: Service<Body, Ids, PersonActor>,
+  { signedBy }: { signedBy?: SignedBy<NoInfer<Body>> } = {},
 ): Route {
-  return commandRoute<Body, Ids, PersonActor>(definition, service)
+  return commandRoute<Body, Ids, PersonActor>(definition, service, async (deps, actor, body) => {
+    if (!signedBy) return
+    const personId = signedBy(body, actor)
+    if (personId) await provePin(deps, actor, personId)
+    actor.provedPinOf = personId
+  })
 }
 
 /** The route of a command that a renter sends by link. */
@@ -46,6 +63,7 @@ export function doesByLink<Body, Ids>(
 function commandRoute<Body, Ids, A extends PersonActor | LinkActor>(
   definition: Command<string, Body, Ids>,
   service: Service<Body, Ids, A>,
+  before: (deps: Deps, actor: A, body: Body) => Promise<void> = () => Promise.resolve(),
 ): Route {
   const schema = envelope(definition)
   return {
@@ -55,7 +73,9 @@ function commandRoute<Body, Ids, A extends PersonActor | LinkActor>(
     schemas: { body: schema, answer: commandAnswer(definition.ids) },
     handle: (deps) => async (req, res) => {
       const command = schema.parse(req.body) as Envelope<Body>
-      res.status(201).json(await runCommand(deps, actorOf<A>(req), command, service))
+      const actor = actorOf<A>(req)
+      await before(deps, actor, command.body)
+      res.status(201).json(await runCommand(deps, actor, command, service))
     },
   }
 }

@@ -12,6 +12,8 @@ export interface PersonActor {
   siteId: string | null
   /** The six digits sent along with a command that is signed by PIN; never stored, never logged. */
   pin?: string
+  /** Whose PIN it was, once it was proved; null when none had to be. */
+  provedPinOf?: string | null
 }
 
 export interface LinkActor {
