@@ -22,6 +22,7 @@ export const problems = {
 
   'pin.wrong': 403,
   'pin.locked': 403,
+  'pin.missing': 403,
   'pin.not_enrolled': 403,
   'pin.not_set': 403,
   'pin.taken_shape': 422,
@@ -44,9 +45,11 @@ export const problems = {
   'items.code_taken': 409,
   'items.changed': 409,
   'items.reason': 422,
+  'items.rack_place': 422,
 
   'labels.unknown': 404,
   'labels.taken': 409,
+  'skis.not_on_rail': 422,
 
   'models.not_approved': 409,
   'models.in_use': 409,
@@ -55,11 +58,14 @@ export const problems = {
   'models.sheet_unfinished': 422,
 
   'forms.sent': 409,
-  'forms.period': 422,
+  'sites.unknown': 404,
+  'rentals.unknown': 404,
   'rentals.taken': 409,
   'rentals.state': 409,
   'ownBoots.same_person': 409,
+  'ownBoots.read_anew': 409,
 
+  'renters.unfinished': 422,
   'renters.request_not_allowed': 422,
   'renters.unsigned': 422,
   'renters.guardian': 422,
@@ -73,21 +79,35 @@ export const problems = {
   'fittings.void': 409,
   'fittings.unread': 409,
   'fittings.mismatch': 422,
+  'fittings.preset_moved': 409,
+  'fittings.stands_there': 422,
+  'fittings.nothing_to_decide': 422,
+  'fittings.value_not_decidable': 422,
+  'fittings.second_name': 422,
 
   'handOvers.changed': 409,
+  'handOvers.guardian': 422,
   'handOvers.wrong_item': 409,
   'handOvers.sole_differs': 409,
   'handOvers.text': 409,
   'handOvers.done': 409,
 
   'returns.nothing_out': 409,
-  'inspections.unfinished': 422,
+  'returns.side': 422,
+  'inspections.fault_left': 422,
+  'inspections.part_missing': 409,
+  'inspections.rack_place': 422,
+  'inspections.reason': 422,
 
   'quarantine.open': 409,
   'quarantine.release': 409,
+  'quarantine.review_day': 422,
 
+  'callBacks.unknown': 404,
   'callBacks.closed': 409,
+  'callBacks.reason': 422,
   'records.unknown': 404,
+  'records.not_on_rail': 422,
   'records.corrected': 409,
 } as const satisfies Record<string, number>
 

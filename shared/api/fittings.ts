@@ -1,8 +1,7 @@
 import { z } from 'zod'
-import { soleTypes } from '#shared/compatibility/soleFit'
 import { fittingStates } from '#shared/lifecycle/fittingStates'
 import { releaseInputSchema } from '#shared/release/releaseInput'
-import { day, id, instant, line, reason } from '#shared/schemas/common'
+import { day, id, instant, reason } from '#shared/schemas/common'
 import {
   decisionFact,
   decisionKinds,
@@ -50,8 +49,8 @@ export const decideFitting = command({
     skiPairId: id,
     bootsId: id.nullable(),
     kind: z.enum(decisionKinds),
-    /** For a value decided otherwise: rows from the computed one, positive is a higher value. */
-    rows: z.literal([-2, -1, 1, 2]).optional(),
+    /** For a value decided otherwise: rows from the computed one, positive is a higher value, 0 takes it back. */
+    rows: z.literal([-2, -1, 0, 1, 2]).optional(),
     /** The second name, for a value more than one row up; proved by their PIN. */
     secondPersonId: id.optional(),
     reason,
@@ -59,35 +58,17 @@ export const decideFitting = command({
   ids: z.object({ decisionId: id }),
 })
 
-/** The renter's own boots as somebody read and judged them at the counter. */
-export const judgeOwnBoots = command({
-  kind: 'ownBoots.judge',
-  path: '/api/own-boots/judge',
-  access: 'fittings.claim',
-  body: z.strictObject({
-    rentalId: id,
-    description: line(80),
-    soleLengthMm: z.int().min(150).max(400),
-    soleType: z.enum(soleTypes),
-    wear: z.enum(['sound', 'worn']),
-  }),
-  ids: z.object({ ownBootsId: id }),
-})
-
-/** Somebody else of the workshop looked at them too and reads the same. */
-export const lookAgainAtOwnBoots = command({
-  kind: 'ownBoots.lookAgain',
-  path: '/api/own-boots/look-again',
-  access: 'tickets.work',
-  body: z.strictObject({ ownBootsId: id }),
-  ids: z.object({ ownBootsId: id }),
-})
-
-/** What a fitting of these three would be computed from; boots left out are the renter's own. */
+/** What a fitting of these parts would be computed from; a part that is not chosen yet is null. */
 export const getFittingFacts = read({
   path: '/api/fittings/facts',
   access: 'renters.read',
-  query: z.object({ rentalId: id, skiPairId: id.optional(), bootsId: id.optional() }),
+  query: z.object({
+    rentalId: id,
+    skiPairId: id.optional(),
+    bootsId: id.optional(),
+    /** The renter's own boots, instead of a pair of the shop's. */
+    boots: z.literal('own').optional(),
+  }),
   answer: fittingFacts.extend({
     renter: z.object({
       id,
