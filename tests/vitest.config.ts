@@ -1,7 +1,17 @@
+import { fileURLToPath } from 'node:url'
 import vue from '@vitejs/plugin-vue'
 import { defineConfig } from 'vitest/config'
 
-const root = new URL('..', import.meta.url).pathname
+const root = fileURLToPath(new URL('..', import.meta.url))
+
+/** Tests against a real PostgreSQL: a fresh copy of a migrated database for every file. */
+const onDatabase = {
+  globalSetup: ['tests/support/globalDatabase.ts'],
+  env: { NODE_ENV: 'test' },
+  maxWorkers: 2,
+  testTimeout: 30_000,
+  hookTimeout: 60_000,
+}
 
 export default defineConfig({
   root,
@@ -17,28 +27,17 @@ export default defineConfig({
         test: { name: 'client', include: ['tests/unit/src/**/*.test.ts'], environment: 'happy-dom' },
       },
       { extends: true, test: { name: 'reference', include: ['tests/reference/**/*.test.ts'] } },
+      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], ...onDatabase } },
+      { extends: true, test: { name: 'sockets', include: ['tests/sockets/**/*.test.ts'], ...onDatabase } },
       {
+        // What is killed, taken or cut off on purpose: real processes, one file after the other.
         extends: true,
         test: {
-          name: 'api',
-          include: ['tests/api/**/*.test.ts'],
-          globalSetup: ['tests/support/globalDatabase.ts'],
-          env: { NODE_ENV: 'test' },
-          maxWorkers: 2,
-          testTimeout: 20_000,
-          hookTimeout: 60_000,
-        },
-      },
-      {
-        extends: true,
-        test: {
-          name: 'sockets',
-          include: ['tests/sockets/**/*.test.ts'],
-          globalSetup: ['tests/support/globalDatabase.ts'],
-          env: { NODE_ENV: 'test' },
-          maxWorkers: 2,
-          testTimeout: 30_000,
-          hookTimeout: 60_000,
+          name: 'faults',
+          include: ['tests/faults/**/*.test.ts'],
+          fileParallelism: false,
+          testTimeout: 60_000,
+          hookTimeout: 120_000,
         },
       },
     ],

@@ -2,32 +2,51 @@ import { randomBytes } from 'node:crypto'
 import pg from 'pg'
 import { afterAll, inject } from 'vitest'
 import { openDb } from '../../server/db/client'
-import { ensureDatabase } from '../../server/postgres/roles'
+import { ensureDatabase, type Database } from '../../server/postgres/roles'
 
-export interface TestDatabase {
-  /** As the role that owns the schema, for what no program may do. */
-  ownerUrl: string
-  /** As the role that the server runs under. */
-  appUrl: string
+export interface TestDatabase extends Database {
   db: ReturnType<typeof openDb>['db']
   pool: pg.Pool
 }
 
 /** A fresh, migrated database for one test file; it goes away when the file is done. */
 export async function testDatabase(): Promise<TestDatabase> {
-  const setupUrl = (database: string) => inject('setupUrl').replace('{}', database)
-  const name = `test_${randomBytes(6).toString('hex')}`
-  const admin = new pg.Client({ connectionString: setupUrl('postgres') })
-  await admin.connect()
-  await admin.query(
-    `create database ${name} template ${inject('templateDatabase')} strategy file_copy owner notchwise_owner`,
-  )
-  const { ownerUrl, appUrl } = await ensureDatabase(setupUrl, name)
-  const { db, pool, close } = openDb(appUrl)
+  const copy = await copyDatabase(inject('setupUrl'), inject('templateDatabase'))
+  const { db, pool, close } = openDb(copy.appUrl)
   afterAll(async () => {
     await close()
-    await admin.query(`drop database if exists ${name} with (force)`)
-    await admin.end()
+    await copy.drop()
   })
-  return { ownerUrl, appUrl, db, pool }
+  return { ownerUrl: copy.ownerUrl, appUrl: copy.appUrl, db, pool }
+}
+
+export interface DatabaseCopy extends Database {
+  drop: () => Promise<void>
+}
+
+/** A copy of a template database; in `setupUrl`, `{}` stands for a database's name. */
+export async function copyDatabase(setupUrl: string, template: string): Promise<DatabaseCopy> {
+  const urlOf = (database: string) => setupUrl.replace('{}', database)
+  const name = `test_${randomBytes(6).toString('hex')}`
+  await asSetup(
+    urlOf,
+    `create database ${name} template ${pg.escapeIdentifier(template)} strategy file_copy owner notchwise_owner`,
+  )
+  return {
+    ...(await ensureDatabase(urlOf, name)),
+    drop: () => dropDatabase(urlOf, name),
+  }
+}
+
+export const dropDatabase = (urlOf: (database: string) => string, name: string) =>
+  asSetup(urlOf, `drop database if exists ${pg.escapeIdentifier(name)} with (force)`)
+
+async function asSetup(urlOf: (database: string) => string, statement: string) {
+  const client = new pg.Client({ connectionString: urlOf('postgres') })
+  await client.connect()
+  try {
+    await client.query(statement)
+  } finally {
+    await client.end()
+  }
 }

@@ -1,4 +1,3 @@
-import pg from 'pg'
 import type { TestProject } from 'vitest/node'
 import { migrateDatabase } from '../../server/db/migrate'
 import { ensureDatabase } from '../../server/postgres/roles'
@@ -12,19 +11,14 @@ declare module 'vitest' {
   }
 }
 
-/** One migrated template database a run; every test file gets a copy of it. */
+const template = 'test_template'
+
+/** A database server for one run, and one migrated database that every test file gets a copy of. */
 export default async function globalDatabase(project: TestProject) {
   const cluster = await testCluster()
-  const template = `test_template_${process.pid}_${project.name}`
   const { ownerUrl } = await ensureDatabase(cluster.setupUrl, template)
   await migrateDatabase(ownerUrl)
   project.provide('setupUrl', cluster.setupUrl('{}'))
   project.provide('templateDatabase', template)
-  return async () => {
-    const admin = new pg.Client({ connectionString: cluster.setupUrl('postgres') })
-    await admin.connect()
-    await admin.query(`drop database if exists ${template} with (force)`)
-    await admin.end()
-    await cluster.stop()
-  }
+  return () => cluster.stop()
 }
