@@ -16,6 +16,7 @@ export const problems = {
   'session.role': 403,
   'session.shop': 404,
   'session.stopped': 403,
+  'session.switched': 409,
 
   'command.reused': 422,
   'command.stale': 409,
@@ -30,9 +31,18 @@ export const problems = {
   'setup.closed': 409,
   'setup.wrong_code': 403,
 
+  'people.unknown': 404,
   'people.email_taken': 409,
   'people.last_manager': 409,
+  'people.other_shop': 409,
+  'devices.unknown': 404,
   'devices.revoked': 409,
+
+  'sites.unknown': 404,
+  'sites.name_taken': 409,
+  'texts.changed': 409,
+  'texts.unreviewed': 409,
+  'tableEdition.changed': 409,
 
   'links.unknown': 404,
   'links.expired': 410,
@@ -58,7 +68,6 @@ export const problems = {
   'models.sheet_unfinished': 422,
 
   'forms.sent': 409,
-  'sites.unknown': 404,
   'rentals.unknown': 404,
   'rentals.taken': 409,
   'rentals.state': 409,

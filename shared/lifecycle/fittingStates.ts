@@ -16,6 +16,7 @@ export const voidReasons = [
   'binding_model_changed',
   'correction_changed',
   'preset_changed',
+  'record_error',
   'refitted',
   'cannot_be_set',
 ] as const

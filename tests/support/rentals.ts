@@ -97,7 +97,13 @@ export async function addFitting(
     pair,
     boots,
     soleLengthMm = 305,
-  }: { rental: TestRental; pair: TestPair; boots: { id: string }; soleLengthMm?: number },
+  }: {
+    rental: TestRental
+    pair: TestPair
+    /** The shop's boots, or a reading of the renter's own. */
+    boots: { id: string; own?: boolean }
+    soleLengthMm?: number
+  },
 ): Promise<{ id: string; number: number }> {
   const release = releaseSetting({
     mass: { unit: 'kg', value: 78 },
@@ -127,7 +133,7 @@ export async function addFitting(
       renterId: rental.renterId,
       inputsId: rental.inputsId,
       skiPairId: pair.id,
-      bootsId: boots.id,
+      ...(boots.own ? { ownBootsId: boots.id } : { bootsId: boots.id }),
       soleLengthMm,
       release: {
         row: release.row,
@@ -151,9 +157,10 @@ export async function addFitting(
     await addStateChange(within, shop, { kind: 'ski_pair', id: pair.id }, 'racked', 'claimed', {
       subjectId: id,
     })
-    await addStateChange(within, shop, { kind: 'boots', id: boots.id }, 'racked', 'claimed', {
-      subjectId: id,
-    })
+    if (!boots.own)
+      await addStateChange(within, shop, { kind: 'boots', id: boots.id }, 'racked', 'claimed', {
+        subjectId: id,
+      })
     return next!.number
   })
   return { id, number }

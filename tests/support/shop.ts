@@ -36,7 +36,7 @@ export interface Answered<Ids = unknown> {
 export interface Person {
   /** Sends a command in a fresh envelope, or in the one given. */
   send: <Body, Ids>(
-    command: Pick<Command<string, Body, Ids>, 'kind' | 'path'>,
+    command: Command<string, Body, Ids>,
     body: NoInfer<Body>,
     options?: { pin?: string; envelope?: { id?: string; occurredAt?: string } },
   ) => Promise<Answered<Ids>>
@@ -97,8 +97,8 @@ export async function shopIn(app: TestApp, name: string) {
     /** The signed-in supertest agent itself, for requests that are neither command nor read. */
     agent: agentOf,
     stranger: (): Person => person(() => Promise.resolve(app.stranger())),
-    enrol: (station: string) =>
-      enrolDevice(db, { shopId, siteId: siteIds[0], station, enrolledBy: people.manager.id }),
+    enrol: (station: string, siteId: string = siteIds[0]) =>
+      enrolDevice(db, { shopId, siteId, station, enrolledBy: people.manager.id }),
     another: () => shopIn(app, 'Other Hire'),
     /** The head technician signs the table edition. */
     approveTable: async () =>
@@ -184,8 +184,7 @@ function makers(db: TestApp['database']['db'], shop: { shopId: string; siteId: s
     },
     rental: (values: RentalValues = {}): Promise<TestRental> =>
       addRental(db, { ...shop, number: next() }, values),
-    fitting: (of: { rental: TestRental; pair: TestPair; boots: { id: string }; soleLengthMm?: number }) =>
-      addFitting(db, shop, of),
+    fitting: (of: Parameters<typeof addFitting>[2]) => addFitting(db, shop, of),
     hold: (item: { kind: 'ski_pair' | 'boots'; id: string }, from: Parameters<typeof addHold>[3]) =>
       addHold(db, shop, item, from),
     change: (

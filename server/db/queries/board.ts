@@ -6,14 +6,14 @@ import type { Reader } from '../../deps'
 const iso = (date: Date) => date.toISOString()
 const isoOrNull = (date: Date | null) => date?.toISOString() ?? null
 
-/** Sides of an item that are still out while the item itself came back. */
-const missing = (
-  itemId: typeof skiPairs.id | typeof boots.id,
-  state: typeof skiPairs.state | typeof boots.state,
-) =>
-  sql<('left' | 'right')[]>`case when ${state} in ('out', 'racked') then '{}'::text[] else coalesce(
-    (select array_agg(${rentalItems.side} order by ${rentalItems.side}) from ${rentalItems}
-     where ${rentalItems.itemId} = ${itemId} and ${rentalItems.backAt} is null), '{}'::text[]) end`
+/**
+ * Sides of an item that are still out while the item itself came back. The tables are named by hand: in a select
+ * from one table Drizzle leaves the names off, and `id` would be the inner table's.
+ */
+const missing = (table: typeof skiPairs | typeof boots) =>
+  sql<('left' | 'right')[]>`case when ${table.state} in ('out', 'racked') then '{}'::text[] else coalesce(
+    (select array_agg(o.side order by o.side) from ${rentalItems} o
+     where o.item_id = ${table}.id and o.back_at is null), '{}'::text[]) end`
 
 async function itemRows(
   db: Reader,
@@ -31,7 +31,7 @@ async function itemRows(
       since: table.stateSince,
       siteId: table.siteId,
       rackPlace: table.rackPlace,
-      missing: missing(table.id, table.state),
+      missing: missing(table),
     })
     .from(table)
     .where(
@@ -89,8 +89,8 @@ async function rentalRows(db: Reader, shopId: string, ids: string[] | 'live'): P
       arrivedAt: rentals.arrivedAt,
       promisedAt: rentals.promisedAt,
       endsOn: rentals.endsOn,
-      out: sql<number>`(select count(*)::int from ${rentalItems}
-        where ${rentalItems.rentalId} = ${rentals.id} and ${rentalItems.backAt} is null)`,
+      out: sql<number>`(select count(*)::int from ${rentalItems} o
+        where o.rental_id = ${rentals}.id and o.back_at is null)`,
     })
     .from(rentals)
     .where(
