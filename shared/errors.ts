@@ -15,7 +15,6 @@ export const problems = {
   'session.wrong_credentials': 401,
   'session.role': 403,
   'session.shop': 404,
-  'session.stopped': 403,
   'session.switched': 409,
 
   'command.reused': 422,
@@ -36,7 +35,6 @@ export const problems = {
   'people.last_manager': 409,
   'people.other_shop': 409,
   'devices.unknown': 404,
-  'devices.revoked': 409,
 
   'sites.unknown': 404,
   'sites.name_taken': 409,

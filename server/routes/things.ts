@@ -7,6 +7,7 @@ import {
   releaseQuarantine,
   replaceLabel,
   reviewQuarantine,
+  undoMove,
 } from '#shared/api/items'
 import {
   approveBindingModel,
@@ -26,7 +27,7 @@ import { Problem } from '../errors'
 import { actorOf } from '../middleware/access'
 import type { PersonActor } from '../services/actor'
 import { changeBootsService, createBootsService } from '../services/boots'
-import { lookUp, moveItemService, replaceLabelService } from '../services/items'
+import { lookUp, moveItemService, replaceLabelService, undoMoveService } from '../services/items'
 import {
   approveBindingModelService,
   saveBindingModelService,
@@ -72,6 +73,7 @@ export const thingsRoutes: Route[] = [
   does(changeBoots, changeBootsService),
   answers(lookUpLabel, (deps, { shopId }, { query }) => lookUp(deps.db, shopId, query.label)),
   does(moveItem, moveItemService),
+  does(undoMove, undoMoveService),
   does(replaceLabel, replaceLabelService),
   answers(listQuarantine, (deps, { shopId }) => quarantineList(deps.db, shopId)),
   does(openQuarantine, openQuarantineService),

@@ -1,4 +1,4 @@
-import { and, eq } from 'drizzle-orm'
+import { and, eq, sql } from 'drizzle-orm'
 import type { changeBoots, createBoots } from '#shared/api/boots'
 import type { BodyOf, IdsOf } from '#shared/api/define'
 import { labelFor } from '#shared/labels/labels'
@@ -9,6 +9,7 @@ import type { PersonActor } from './actor'
 import type { Service } from './commands'
 import { doubtFittings } from './doubt'
 import { changedFields, noteOfficeChange } from './office'
+import { lockOpenFittingOf } from './openFittings'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
@@ -24,7 +25,13 @@ export const createBootsService: Does<typeof createBoots> = async (context, body
   try {
     const [row] = await tx
       .insert(boots)
-      .values({ ...body, shopId, siteId: body.homeSiteId, stateSince: context.occurredAt })
+      .values({
+        ...body,
+        rackPlace: body.rackPlace || null,
+        shopId,
+        siteId: body.homeSiteId,
+        stateSince: context.occurredAt,
+      })
       .returning({ id: boots.id })
     const bootsId = row!.id
     for (const side of ['left', 'right'] as const) {
@@ -45,22 +52,24 @@ export const createBootsService: Does<typeof createBoots> = async (context, body
 
 export const changeBootsService: Does<typeof changeBoots> = async (context, { id, version, ...values }) => {
   const { tx, actor } = context
+  await lockOpenFittingOf(context, { kind: 'boots', id })
   const [before] = await tx
     .select()
     .from(boots)
     .where(and(eq(boots.id, id), eq(boots.shopId, actor.shopId)))
     .for('update')
   if (!before) throw new Problem('items.unknown')
-  if (before.version !== version) throw new Problem('items.changed')
+  if (before.state === 'quarantine') throw new Problem('items.held', { code: before.code })
+  if (before.version !== version) throw new Problem('items.changed', { code: before.code })
   await requireOwnSite(tx, actor.shopId, values.homeSiteId)
+  const otherSole = values.soleLengthMm !== before.soleLengthMm || values.soleType !== before.soleType
+  if (otherSole) await doubtFittings(context, { bootsId: id }, 'sole_changed')
+  const now = { ...values, rackPlace: values.rackPlace || null }
   await tx
     .update(boots)
-    .set({ ...values, version: version + 1 })
+    .set({ ...now, version: sql`${boots.version} + 1` })
     .where(eq(boots.id, id))
-  await noteOfficeChange(context, 'boots.change', id, changedFields(before, values))
-  if (values.soleLengthMm !== before.soleLengthMm || values.soleType !== before.soleType) {
-    await doubtFittings(context, { bootsId: id }, 'sole_changed')
-  }
+  await noteOfficeChange(context, 'boots.change', id, changedFields(before, now))
   context.touchItem('boots', id)
   return { bootsId: id }
 }

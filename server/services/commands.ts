@@ -197,6 +197,8 @@ function asRefusal(error: unknown): Problem | null {
   if (found.code === 'NW003')
     return new Problem('handOvers.changed', { changed: (found.detail ?? '').split(',') })
   if (found.code === 'NW004') return new Problem('models.not_approved', {})
+  if (found.code === 'NW005') return new Problem('fittings.not_open', { state: found.detail ?? '' })
+  if (found.code === 'NW006') return new Problem('items.changed', {})
   if (found.code === '23505' && found.constraint?.startsWith('fittings_open_'))
     return new Problem('items.taken', {})
   return null

@@ -14,29 +14,40 @@ import type { CommandContext, Service } from './commands'
 import { doubtFittings } from './doubt'
 import { changedFields, noteOfficeChange } from './office'
 import { imageFromDataUrl } from './pictures'
+import { carryPresets } from './presets'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
+type SkiModelValues = Omit<BodyOf<typeof saveSkiModel>, 'id'>
+
 export const saveSkiModelService: Does<typeof saveSkiModel> = async (context, { id, ...values }) => {
-  const { tx, actor } = context
   try {
-    const [row] = id
-      ? await tx
-          .update(skiModels)
-          .set(values)
-          .where(and(eq(skiModels.id, id), eq(skiModels.shopId, actor.shopId)))
-          .returning({ id: skiModels.id })
-      : await tx
-          .insert(skiModels)
-          .values({ ...values, shopId: actor.shopId })
-          .returning({ id: skiModels.id })
-    if (!row) throw new Problem('items.unknown')
-    await noteOfficeChange(context, 'skiModels.save', row.id, Object.keys(values))
-    return { skiModelId: row.id }
+    const skiModelId = id ? await changeSkiModel(context, id, values) : await addSkiModel(context, values)
+    return { skiModelId }
   } catch (error) {
     if (isDuplicate(error, 'ski_models_name')) throw new Problem('models.name_taken', { name: values.name })
     throw error
   }
+}
+
+async function addSkiModel(context: CommandContext, values: SkiModelValues): Promise<string> {
+  const [made] = await context.tx
+    .insert(skiModels)
+    .values({ ...values, shopId: context.actor.shopId })
+    .returning({ id: skiModels.id })
+  await noteOfficeChange(context, 'skiModels.save', made!.id, Object.keys(values))
+  return made!.id
+}
+
+/** Another offset of the mounting mark is another track position for every boot on these skis. */
+async function changeSkiModel(context: CommandContext, id: string, values: SkiModelValues): Promise<string> {
+  const own = and(eq(skiModels.id, id), eq(skiModels.shopId, context.actor.shopId))
+  const [before] = await context.tx.select().from(skiModels).where(own).for('update')
+  if (!before) throw new Problem('items.unknown')
+  await context.tx.update(skiModels).set(values).where(own)
+  await noteOfficeChange(context, 'skiModels.save', id, changedFields(before, values))
+  if (before.offsetMm !== values.offsetMm) await doubtPairs(context, skiPairs.skiModelId, id)
+  return id
 }
 
 /** The model's row, locked, as the editor saw it; `items.changed` when somebody else was faster. */
@@ -51,18 +62,24 @@ async function lockModel(context: CommandContext, id: string, version: number | 
   return row
 }
 
-/** Fittings that were computed with the sheet as it was are void, or are called back. */
-async function doubtModel(context: CommandContext, bindingModelId: string, before: string) {
+/** What these pairs' fittings were computed with has changed: they are void, or are called back. */
+async function doubtPairs(
+  context: CommandContext,
+  of: typeof skiPairs.skiModelId | typeof skiPairs.bindingModelId,
+  modelId: string,
+) {
+  const pairs = await context.tx.select({ id: skiPairs.id }).from(skiPairs).where(eq(of, modelId))
+  const reason = of === skiPairs.bindingModelId ? 'binding_model_changed' : 'ski_pair_changed'
+  await doubtFittings(context, { skiPairIds: pairs.map((pair) => pair.id) }, reason)
+}
+
+/** Doubts the fittings of a binding model whose sheet is no longer what it was. */
+async function doubtSheet(context: CommandContext, bindingModelId: string, before: string) {
   const [now] = await context.tx
     .select({ sha: bindingModels.contentSha256 })
     .from(bindingModels)
     .where(eq(bindingModels.id, bindingModelId))
-  if (now?.sha === before) return
-  const pairs = await context.tx
-    .select({ id: skiPairs.id })
-    .from(skiPairs)
-    .where(eq(skiPairs.bindingModelId, bindingModelId))
-  await doubtFittings(context, { skiPairIds: pairs.map((pair) => pair.id) }, 'binding_model_changed')
+  if (now?.sha !== before) await doubtPairs(context, skiPairs.bindingModelId, bindingModelId)
 }
 
 export const saveBindingModelService: Does<typeof saveBindingModel> = async (
@@ -79,6 +96,7 @@ export const saveBindingModelService: Does<typeof saveBindingModel> = async (
         .insert(bindingModels)
         .values({ ...values, shopId: actor.shopId })
         .returning({ id: bindingModels.id })
+      await noteOfficeChange(context, 'bindingModels.save', made!.id, Object.keys(values))
       return { bindingModelId: made!.id }
     }
     const before = await lockModel(context, id, version)
@@ -87,7 +105,8 @@ export const saveBindingModelService: Does<typeof saveBindingModel> = async (
       .set({ ...values, version: before.version + 1 })
       .where(eq(bindingModels.id, id))
     await noteOfficeChange(context, 'bindingModels.save', id, changedFields(before, values))
-    await doubtModel(context, id, before.contentSha256)
+    await doubtSheet(context, id, before.contentSha256)
+    await carryPresets(context, id, before.track, values.track)
     return { bindingModelId: id }
   } catch (error) {
     if (isDuplicate(error, 'binding_models_name'))
@@ -107,7 +126,7 @@ export const setWindowPictureService: Does<typeof setWindowPicture> = async (
     .set({ windowPicture: bytes, windowPictureType: type, version: before.version + 1 })
     .where(eq(bindingModels.id, id))
   await noteOfficeChange(context, 'bindingModels.setWindowPicture', id, ['windowPicture'])
-  await doubtModel(context, id, before.contentSha256)
+  await doubtSheet(context, id, before.contentSha256)
   return { bindingModelId: id }
 }
 

@@ -1,21 +1,23 @@
-import { and, eq, inArray, isNull } from 'drizzle-orm'
+import { and, eq, isNull } from 'drizzle-orm'
 import type { openQuarantine, releaseQuarantine, reviewQuarantine } from '#shared/api/items'
 import type { BodyOf, IdsOf } from '#shared/api/define'
-import { fittings, memberships, quarantines } from '../db/schema/schema'
+import { memberships, quarantines } from '../db/schema/schema'
 import { Problem } from '../errors'
 import type { PersonActor } from './actor'
 import type { CommandContext, Service } from './commands'
 import { endFitting } from './doubt'
-import { changeState, lockItem } from './stateChanges'
+import { lockOpenFittingOf } from './openFittings'
+import { shopById, shopDay } from './shops'
+import { changeState, lockItem, type ItemRef } from './stateChanges'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
-/** Anybody may hold an item; a fitting that has it becomes void first. */
+/** Anybody may hold an item, whatever its state; a fitting that has it becomes void first. */
 export const openQuarantineService: Does<typeof openQuarantine> = async (context, body) => {
   const { tx, actor } = context
   await requireOwner(context, body.ownerId)
-  await endOpenFitting(context, body)
-  const item = await lockItem(tx, actor.shopId, { kind: body.itemKind, id: body.itemId })
+  await requireReviewDay(context, body.reviewOn)
+  const item = await lockFreeItem(context, { kind: body.itemKind, id: body.itemId })
   if (item.state === 'quarantine') throw new Problem('quarantine.open', { code: item.code })
   const [hold] = await tx
     .insert(quarantines)
@@ -40,20 +42,22 @@ export const openQuarantineService: Does<typeof openQuarantine> = async (context
   return { quarantineId: hold!.id }
 }
 
-async function endOpenFitting(context: CommandContext, { itemKind, itemId }: BodyOf<typeof openQuarantine>) {
-  const [fitting] = await context.tx
-    .select()
-    .from(fittings)
-    .where(
-      and(
-        eq(fittings.shopId, context.actor.shopId),
-        eq(itemKind === 'ski_pair' ? fittings.skiPairId : fittings.bootsId, itemId),
-        inArray(fittings.state, ['claimed', 'prepared']),
-      ),
-    )
-    .for('update')
-  const reason = itemKind === 'ski_pair' ? 'ski_pair_changed' : 'boots_changed'
-  if (fitting) await endFitting(context, fitting, { state: 'void', reason })
+/** The item, locked, after the fitting that has it ended; also when somebody claims it at this very moment. */
+async function lockFreeItem(context: CommandContext, ref: ItemRef) {
+  for (;;) {
+    const fitting = await lockOpenFittingOf(context, ref)
+    const reason = ref.kind === 'ski_pair' ? 'ski_pair_changed' : 'boots_changed'
+    if (fitting) await endFitting(context, fitting, { state: 'void', reason })
+    const item = await lockItem(context.tx, context.actor.shopId, ref)
+    if (item.state !== 'claimed' && item.state !== 'prepared') return item
+  }
+}
+
+/** A hold is looked at again on a day that is still to come, today included. */
+async function requireReviewDay(context: CommandContext, reviewOn: string) {
+  const shop = await shopById(context.tx, context.actor.shopId)
+  const today = shopDay(shop, context.deps.now())
+  if (reviewOn < today) throw new Problem('quarantine.review_day', { today })
 }
 
 async function requireOwner(context: CommandContext, personId: string) {
@@ -82,6 +86,7 @@ async function lockHold(context: CommandContext, quarantineId: string) {
 export const reviewQuarantineService: Does<typeof reviewQuarantine> = async (context, body) => {
   await lockHold(context, body.quarantineId)
   await requireOwner(context, body.ownerId)
+  await requireReviewDay(context, body.reviewOn)
   await context.tx
     .update(quarantines)
     .set({ ownerId: body.ownerId, reviewOn: body.reviewOn })

@@ -1,24 +1,24 @@
-import { and, eq } from 'drizzle-orm'
+import { and, eq, sql } from 'drizzle-orm'
 import type { changeSkiPair, createSkiPair, readPreset } from '#shared/api/skiPairs'
 import type { BodyOf, IdsOf } from '#shared/api/define'
 import { labelFor } from '#shared/labels/labels'
-import { malformedPreset } from '#shared/track/trackPlan'
-import { bindingModels, labels, presetChanges, sites, skiModels, skiPairs, skis } from '../db/schema/schema'
+import { bindingModels, labels, sites, skiModels, skiPairs, skis } from '../db/schema/schema'
 import type { Tx } from '../deps'
 import { isDuplicate, Problem } from '../errors'
 import type { PersonActor } from './actor'
-import type { CommandContext, Service } from './commands'
+import type { Service } from './commands'
 import { doubtFittings } from './doubt'
 import { changedFields, noteOfficeChange } from './office'
+import { lockOpenFittingOf } from './openFittings'
+import { forgetPresets, skiWithTrack, writePreset } from './presets'
+import { lockItem } from './stateChanges'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
+type OwnRefs = Pick<BodyOf<typeof createSkiPair>, 'skiModelId' | 'bindingModelId' | 'homeSiteId'>
+
 /** Models and site must be of this shop. */
-async function requireOwn(
-  tx: Tx,
-  shopId: string,
-  { skiModelId, bindingModelId, homeSiteId }: BodyOf<typeof createSkiPair>,
-) {
+async function requireOwn(tx: Tx, shopId: string, { skiModelId, bindingModelId, homeSiteId }: OwnRefs) {
   const own = await Promise.all([
     tx.$count(skiModels, and(eq(skiModels.id, skiModelId), eq(skiModels.shopId, shopId))),
     tx.$count(bindingModels, and(eq(bindingModels.id, bindingModelId), eq(bindingModels.shopId, shopId))),
@@ -34,7 +34,13 @@ export const createSkiPairService: Does<typeof createSkiPair> = async (context, 
   try {
     const [pair] = await tx
       .insert(skiPairs)
-      .values({ ...body, shopId, siteId: body.homeSiteId, stateSince: context.occurredAt })
+      .values({
+        ...body,
+        rackPlace: body.rackPlace || null,
+        shopId,
+        siteId: body.homeSiteId,
+        stateSince: context.occurredAt,
+      })
       .returning({ id: skiPairs.id })
     const skiPairId = pair!.id
     for (const side of ['left', 'right'] as const) {
@@ -59,82 +65,45 @@ export const changeSkiPairService: Does<typeof changeSkiPair> = async (
   { id, version, ...values },
 ) => {
   const { tx, actor } = context
+  await lockOpenFittingOf(context, { kind: 'ski_pair', id })
   const [before] = await tx
     .select()
     .from(skiPairs)
     .where(and(eq(skiPairs.id, id), eq(skiPairs.shopId, actor.shopId)))
     .for('update')
   if (!before) throw new Problem('items.unknown')
-  if (before.version !== version) throw new Problem('items.changed')
-  await requireOwn(tx, actor.shopId, { ...values, code: before.code })
+  if (before.state === 'quarantine') throw new Problem('items.held', { code: before.code })
+  if (before.version !== version) throw new Problem('items.changed', { code: before.code })
+  await requireOwn(tx, actor.shopId, values)
+  const otherBinding = values.bindingModelId !== before.bindingModelId
+  if (otherBinding) await doubtFittings(context, { skiPairId: id }, 'binding_model_changed')
+  const now = { ...values, rackPlace: values.rackPlace || null }
   await tx
     .update(skiPairs)
-    .set({ ...values, version: version + 1 })
+    .set({ ...now, version: sql`${skiPairs.version} + 1` })
     .where(eq(skiPairs.id, id))
-  await noteOfficeChange(context, 'skiPairs.change', id, changedFields(before, values))
-  if (values.bindingModelId !== before.bindingModelId) {
-    await doubtFittings(context, { skiPairId: id }, 'binding_model_changed')
-  }
+  if (otherBinding) await forgetPresets(context, id)
+  await noteOfficeChange(context, 'skiPairs.change', id, changedFields(before, now))
   context.touchItem('ski_pair', id)
   return { skiPairId: id }
 }
 
-/** The ski with its track, as the reader saw it; `items.changed` when its preset was changed meanwhile. */
-export async function skiWithTrack(context: CommandContext, skiId: string, version: number) {
-  const [found] = await context.tx
-    .select({ ski: skis, track: bindingModels.track, skiPairId: skiPairs.id })
-    .from(skis)
-    .innerJoin(skiPairs, eq(skiPairs.id, skis.skiPairId))
-    .innerJoin(bindingModels, eq(bindingModels.id, skiPairs.bindingModelId))
-    .where(and(eq(skis.id, skiId), eq(skis.shopId, context.actor.shopId)))
-  if (!found) throw new Problem('items.unknown')
-  if (found.ski.presetVersion !== version) throw new Problem('items.changed')
-  return found
-}
-
-/** Writes where a ski's units stand; the database projects it onto the ski. */
-export async function writePreset(
-  context: CommandContext<PersonActor>,
-  { ski, track }: Pick<Awaited<ReturnType<typeof skiWithTrack>>, 'ski' | 'track'>,
-  stands: { toe: number; heel: number; turns: number | null },
-  reason: 'read' | 'read_back' | 'stood_elsewhere',
-  fittingId?: string,
-): Promise<number> {
-  const preset = track.fineScrew ? stands : { toe: stands.toe, heel: stands.heel }
-  if (malformedPreset(track, preset)) throw new Problem('request.malformed')
-  const presetVersion = ski.presetVersion + 1
-  await context.tx.insert(presetChanges).values({
-    shopId: context.actor.shopId,
-    skiId: ski.id,
-    presetToe: stands.toe,
-    presetHeel: stands.heel,
-    presetTurns: track.fineScrew ? stands.turns : null,
-    presetVersion,
-    toeCorrection: ski.toeCorrection,
-    heelCorrection: ski.heelCorrection,
-    reason,
-    fittingId,
-    personId: context.actor.personId,
-    deviceId: context.actor.deviceId,
-    occurredAt: context.occurredAt,
-  })
-  return presetVersion
-}
-
+/**
+ * Where one ski's units stand, read outside of any ticket. A preset is part of what was signed: another one makes a
+ * fitting that is prepared void, and one that is out a call-back; the same one leaves it as it is.
+ */
 export const readPresetService: Does<typeof readPreset> = async (context, { skiId, version, ...stands }) => {
   const found = await skiWithTrack(context, skiId, version)
+  const { ski, skiPairId } = found
+  const fitting = await lockOpenFittingOf(context, { kind: 'ski_pair', id: skiPairId })
+  const pair = await lockItem(context.tx, context.actor.shopId, { kind: 'ski_pair', id: skiPairId })
+  if (pair.state === 'quarantine') throw new Problem('items.held', { code: pair.code })
+  const same =
+    ski.presetToe === stands.toe && ski.presetHeel === stands.heel && ski.presetTurns === stands.turns
+  const signed = fitting?.state === 'prepared' || pair.state === 'out'
+  if (signed && same) return { skiId }
+  if (signed) await doubtFittings(context, { skiPairId }, 'preset_changed')
   await writePreset(context, found, stands, 'read')
-  // The preset of a prepared pair is part of what was signed.
-  await doubtPrepared(context, found.skiPairId)
-  context.touchItem('ski_pair', found.skiPairId)
+  context.touchItem('ski_pair', skiPairId)
   return { skiId }
-}
-
-async function doubtPrepared(context: CommandContext, skiPairId: string) {
-  const [pair] = await context.tx
-    .select({ state: skiPairs.state })
-    .from(skiPairs)
-    .where(eq(skiPairs.id, skiPairId))
-  if (pair?.state === 'prepared' || pair?.state === 'out')
-    await doubtFittings(context, { skiPairId }, 'preset_changed')
 }

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { day, id, instant, itemKind, line, reason, side } from '#shared/schemas/common'
+import { stepTargets } from '#shared/lifecycle/steps'
 import { itemState } from '#shared/schemas/items'
 import { command, read } from './define'
 
@@ -11,7 +12,9 @@ export const lookUpLabel = read({
   answer: z.discriminatedUnion('found', [
     z.object({
       found: z.literal(false),
-      why: z.enum(['check_character', 'unfinished', 'not_ours', 'unknown']),
+      why: z.enum(['check_character', 'unfinished', 'not_ours', 'unknown', 'replaced']),
+      /** What a label that was replaced had been on: S417L. */
+      code: z.string().nullable(),
     }),
     z.object({
       found: z.literal(true),
@@ -38,7 +41,10 @@ export const lookUpLabel = read({
   ]),
 })
 
-/** Steps of the life cycle that are no fitting, hand-over, return, inspection or hold. */
+/**
+ * Steps of the life cycle that are no fitting, hand-over, return, inspection or hold. Which of them a role may take
+ * is said per step.
+ */
 export const moveItem = command({
   kind: 'items.move',
   path: '/api/items/move',
@@ -46,10 +52,19 @@ export const moveItem = command({
   body: z.strictObject({
     itemKind,
     itemId: id,
-    to: z.enum(['racked', 'service', 'unchecked', 'lost', 'retired', 'sold', 'under_test']),
+    to: z.enum(stepTargets),
     rackPlace: line(20).default(''),
     reason: line(300).default(''),
   }),
+  ids: z.object({ changeId: id }),
+})
+
+/** Takes back the step that was just made: within a minute, the same day for retired and sold. */
+export const undoMove = command({
+  kind: 'items.undo',
+  path: '/api/items/undo',
+  access: 'fleet.read',
+  body: z.strictObject({ itemKind, itemId: id, changeId: id }),
   ids: z.object({ changeId: id }),
 })
 

@@ -72,20 +72,25 @@ export const saveBindingModel = command({
   kind: 'bindingModels.save',
   path: '/api/binding-models/save',
   access: 'fleet.write',
-  body: z.strictObject({
-    id: id.nullable(),
-    /** The version that the editor saw; null for a new model. */
-    version: z.int().nullable(),
-    name: requiredLine(80),
-    track: trackModelSchema,
-    accepts: z.array(knownSoleType).max(4),
-    refuses: z.array(knownSoleType).max(4),
-    brakeMm: z.int().min(40).max(200).nullable(),
-    manualDocument: line(160),
-    manualEdition: line(40),
-    manualPage: line(40),
-    windowNote: note(400),
-  }),
+  body: z
+    .strictObject({
+      id: id.nullable(),
+      /** The version that the editor saw; null for a new model. */
+      version: z.int().nullable(),
+      name: requiredLine(80),
+      track: trackModelSchema,
+      accepts: z.array(knownSoleType).max(4),
+      refuses: z.array(knownSoleType).max(4),
+      brakeMm: z.int().min(40).max(200).nullable(),
+      manualDocument: line(160),
+      manualEdition: line(40),
+      manualPage: line(40),
+      windowNote: note(400),
+    })
+    .refine(({ accepts, refuses }) => !accepts.some((type) => refuses.includes(type)), {
+      path: ['refuses'],
+      error: 'accepted_and_refused',
+    }),
   ids: z.object({ bindingModelId: id }),
 })
 
@@ -98,7 +103,7 @@ export const setWindowPicture = command({
     version: z.int(),
     picture: z
       .string()
-      .max(400_000)
+      .max(273_100)
       .regex(/^data:image\/(png|jpeg);base64,[A-Za-z0-9+/]+=*$/),
   }),
   ids: z.object({ bindingModelId: id }),

@@ -18,6 +18,8 @@ export const skiPairRow = z.object({
   site: z.string(),
   rackPlace: z.string().nullable(),
   presets: z.array(presetLine),
+  /** Sole lengths for which both skis stand right as they are; null where unknown, different, or none. */
+  fitsSoles: z.object({ minMm: z.number().int(), maxMm: z.number().int() }).nullable(),
   rentals: z.number().int(),
 })
 export type SkiPairRow = z.infer<typeof skiPairRow>
@@ -53,6 +55,7 @@ export const getSkiPair = read({
         side: z.enum(['left', 'right']),
         toe: z.number().int().nullable(),
         heel: z.number().int().nullable(),
+        turns: z.number().nullable(),
         at: instant,
         reason: z.string(),
         person: z.string().nullable(),

@@ -38,6 +38,22 @@ export function labelFor(code: string, side: LabelSide | null): string {
   return sided + check
 }
 
+/** How many labels one ski or boot can have in its life: the first, and those numbered after it. */
+const labelsInALife = 10
+
+/**
+ * The text of a label that takes the place of `before` earlier ones: the number of the replacement stands before
+ * five digits of the code, so that S417L becomes S100417L. Null when there were too many. For a code that is not
+ * ours, or of six digits already, a RangeError.
+ */
+export function replacementLabel(code: string, side: LabelSide, before: number): string | null {
+  const [, letter, digits] = /^([SB])([1-9]\d{0,4})$/.exec(code) ?? []
+  if (!letter || !digits) throw new RangeError(`${code} is no code of ours`)
+  return before > 0 && before < labelsInALife
+    ? labelFor(`${letter}${before}${digits.padStart(5, '0')}`, side)
+    : null
+}
+
 /**
  * What a scanned label says, in capitals or small letters. With a check character only: what was typed by hand is
  * read by parseTyped.

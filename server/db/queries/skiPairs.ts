@@ -14,6 +14,7 @@ import {
   skiPairs,
   skis,
 } from '../schema/schema'
+import { fitsSoles } from './fitsSoles'
 import { bindingModelById } from './models'
 import { fittingsOf, historyOf, labelsOf, openHold, presetsOf, sidesOut } from './items'
 import { contains, iso, numberOf, ordered } from './lists'
@@ -30,6 +31,9 @@ const row = {
   siteId: skiPairs.siteId,
   site: sites.name,
   rackPlace: skiPairs.rackPlace,
+  track: bindingModels.track,
+  contentSha256: bindingModels.contentSha256,
+  offsetMm: skiModels.offsetMm,
   rentals: sql<number>`(select count(*)::int from ${fittings} where ${fittings.skiPairId} = ${skiPairs.id} and ${fittings.state} = 'handed_over')`,
 }
 
@@ -83,12 +87,16 @@ async function withPresets(db: Reader, found: Awaited<ReturnType<typeof joined>>
     db,
     found.map(({ id }) => id),
   )
-  return found.map((pair) => ({
-    ...pair,
-    state: pair.state as SkiPairRow['state'],
-    since: iso(pair.since),
-    presets: presets.get(pair.id) ?? [],
-  }))
+  return found.map(({ track, contentSha256, offsetMm, ...pair }) => {
+    const lines = presets.get(pair.id) ?? []
+    return {
+      ...pair,
+      state: pair.state as SkiPairRow['state'],
+      since: iso(pair.since),
+      presets: lines,
+      fitsSoles: fitsSoles({ track, contentSha256, offsetMm }, lines),
+    }
+  })
 }
 
 /** A pair with all that is known of it. */
@@ -129,6 +137,7 @@ async function presetHistoryOf(db: Reader, skiPairId: string) {
       side: skis.side,
       toe: presetChanges.presetToe,
       heel: presetChanges.presetHeel,
+      turns: presetChanges.presetTurns,
       at: presetChanges.occurredAt,
       reason: presetChanges.reason,
       person: people.name,
