@@ -4,6 +4,7 @@ import helmet from 'helmet'
 import { pinoHttp } from 'pino-http'
 import { sql } from 'drizzle-orm'
 import { findActor } from './auth/actors'
+import { linkLimit } from './auth/limits'
 import { passportFor } from './auth/passport'
 import { sessionMiddleware } from './auth/session'
 import type { Deps } from './deps'
@@ -40,8 +41,16 @@ export function createApp(deps: Deps): App {
     res.set('cache-control', 'no-store')
     next()
   })
+  const links = linkLimit()
   for (const route of routes(passport)) {
-    app[route.method](route.path, requireAccess(route.access), ...(route.before ?? []), route.handle(deps))
+    const guessing = route.access === 'link' ? [links] : []
+    app[route.method](
+      route.path,
+      ...guessing,
+      requireAccess(route.access),
+      ...(route.before ?? []),
+      route.handle(deps),
+    )
   }
   app.use('/api', unknownRoute)
   if (deps.clientDir) serveClient(app, deps.clientDir)

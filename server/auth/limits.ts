@@ -10,7 +10,12 @@ function accountOf(req: Request): string {
   return String(email).trim().toLowerCase().slice(0, 200)
 }
 
-function limit(name: string, tries: number, key: (req: Request) => string): RateLimitRequestHandler {
+function limit(
+  name: string,
+  tries: number,
+  key: (req: Request) => string,
+  { counts = (status: number) => status >= 400 } = {},
+): RateLimitRequestHandler {
   return rateLimit({
     windowMs: 15 * minutes,
     limit: tries,
@@ -18,6 +23,7 @@ function limit(name: string, tries: number, key: (req: Request) => string): Rate
     standardHeaders: 'draft-8',
     legacyHeaders: false,
     skipSuccessfulRequests: true,
+    requestWasSuccessful: (_req, res) => !counts(res.statusCode),
     keyGenerator: key,
     validate: { keyGeneratorIpFallback: false },
     handler: (_req, res) => {
@@ -35,3 +41,19 @@ export const signInLimit = () =>
 
 /** Failed tries of links and set-up codes: thirty a quarter of an hour from one address. */
 export const secretLimit = () => limit('secret', 30, (req) => req.socket.remoteAddress ?? '')
+
+/**
+ * Forms begun at one door's code: more than a crowd does, less than a prank. Phones on the shop's own network share
+ * an address, so the code counts and not who asks.
+ */
+export const doorLimit = () =>
+  limit('door', 300, (req) => String((req.body as { door?: unknown } | undefined)?.door).slice(0, 64), {
+    counts: () => true,
+  })
+
+/**
+ * Links that nobody gave out: sixty a quarter of an hour from one address. What a real link is refused for another
+ * reason does not count, since a shop's guests share an address.
+ */
+export const linkLimit = () =>
+  limit('link', 60, (req) => req.socket.remoteAddress ?? '', { counts: (status) => status === 404 })

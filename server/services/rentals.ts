@@ -1,63 +1,59 @@
-import { and, desc, eq, inArray, sql } from 'drizzle-orm'
-import type {
-  cancelRental,
-  changePeriod,
-  createRental,
-  readOwnBoots,
-  secondLook,
-  takeRental,
-} from '#shared/api/rentals'
+import { and, eq, inArray, sql } from 'drizzle-orm'
+import type { cancelRental, changePeriod, createRental, takeRental } from '#shared/api/rentals'
 import type { BodyOf, IdsOf } from '#shared/api/define'
-import { may } from '#shared/permissions'
-import type { RenterForm } from '#shared/schemas/renters'
-import { dayNumbers, fittings, ownBoots, people, rentals, renters, sites } from '../db/schema/schema'
+import { rentalDays } from '#shared/dates/days'
+import { individualTestFromDays } from '#shared/renters/period'
+import { ageForTable, ageOnFirstDay, formProblems, periodProblems } from '#shared/renters/formRules'
+import type { Period, RenterForm } from '#shared/schemas/renters'
+import { dayNumbers, fittings, people, rentals, renters, sites } from '../db/schema/schema'
 import { Problem } from '../errors'
 import { personIdOf, type PersonActor } from './actor'
 import type { CommandContext, Service } from './commands'
 import { doubtFittings, endFitting } from './doubt'
-import { addInputs, lockRental, replaceInputs, tableAge, type InputValues } from './renters'
+import {
+  addInputs,
+  carriedRequest,
+  contactColumns,
+  lockRental,
+  refuseUnfinished,
+  replaceInputs,
+  saidBy,
+  type InputValues,
+} from './renters'
 import { shopById, shopDay } from './shops'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
 type Sources = Pick<InputValues, 'massSource' | 'massBy' | 'heightSource' | 'heightBy'>
 
+/** Refuses a form that the shop cannot use yet, field by field; answers the age that the table is read with. */
+export async function usableForm(context: CommandContext, form: RenterForm) {
+  const shop = await shopById(context.tx, context.actor.shopId)
+  const today = shopDay(shop, context.deps.now())
+  refuseUnfinished(formProblems(form, { today, ageOfMajority: shop.ageOfMajority }))
+  const age = ageForTable(form, form)
+  if (age === null) throw new Problem('request.malformed')
+  return { shop, age }
+}
+
 /** Renter, inputs and rental from a form, whoever typed it. */
 export async function addRental(
   context: CommandContext,
   form: RenterForm,
-  { siteId, state, sources }: { siteId: string; state: 'waiting' | 'open'; sources: Sources },
+  arrival: { siteId: string; state: 'waiting' | 'open'; arrivedAt: Date; sources: Sources },
 ) {
-  const { tx, actor, occurredAt } = context
-  const shop = await shopById(tx, actor.shopId)
-  if (!(await tx.$count(sites, and(eq(sites.id, siteId), eq(sites.shopId, shop.id)))))
-    throw new Problem('items.unknown')
-  const age = tableAge(form)
-  if (age < shop.ageOfMajority && !form.guardian) throw new Problem('renters.guardian')
+  const { tx, actor } = context
+  const { siteId, state, arrivedAt, sources } = arrival
+  const { shop, age } = await usableForm(context, form)
+  await requireSite(context, siteId)
   const [renter] = await tx
     .insert(renters)
-    .values({
-      shopId: shop.id,
-      firstName: form.firstName,
-      lastName: form.lastName,
-      email: form.email || null,
-      phone: form.phone || null,
-      locale: form.locale,
-      birthDate: form.birthDate,
-      guardianName: form.guardian?.name,
-      guardianRelation: form.guardian?.relation,
-      guardianPhone: form.guardian?.phone || null,
-    })
+    .values({ shopId: shop.id, ...contactColumns(form), birthDate: form.birthDate })
     .returning({ id: renters.id })
   const renterId = renter!.id
-  await addInputs(context, renterId, {
-    ...sources,
-    mass: form.mass,
-    height: form.height,
-    age,
-    skierType: form.skierType,
-  })
-  const day = shopDay(shop, occurredAt)
+  const { mass, height, skierType } = form
+  await addInputs(context, renterId, { ...sources, mass, height, age, skierType })
+  const day = shopDay(shop, arrivedAt)
   const taken = state === 'open'
   const [rental] = await tx
     .insert(rentals)
@@ -73,14 +69,21 @@ export async function addRental(
       ownBoots: form.ownBoots,
       shoe: form.shoe,
       wishes: form.wishes,
-      arrivedAt: occurredAt,
-      promisedAt: new Date(occurredAt.getTime() + shop.promiseMinutes * 60_000),
+      arrivedAt,
+      promisedAt: new Date(arrivedAt.getTime() + shop.promiseMinutes * 60_000),
       takenBy: taken ? personIdOf(actor) : null,
-      takenAt: taken ? occurredAt : null,
+      takenAt: taken ? arrivedAt : null,
     })
     .returning({ id: rentals.id })
   context.touchRental(rental!.id)
   return { rentalId: rental!.id, renterId }
+}
+
+/** A site of this shop. */
+export async function requireSite(context: CommandContext, siteId: string) {
+  const { shopId } = context.actor
+  const own = await context.tx.$count(sites, and(eq(sites.id, siteId), eq(sites.shopId, shopId)))
+  if (own === 0) throw new Problem('sites.unknown')
 }
 
 /** The next short number of the day. */
@@ -100,14 +103,13 @@ export const createRentalService: Does<typeof createRental> = async (
   context,
   { siteId, form, massSource, heightSource },
 ) => {
-  const by = personIdOf(context.actor)
   const sources = {
     massSource,
-    massBy: massSource === 'measured' ? by : null,
+    massBy: saidBy(context, massSource),
     heightSource,
-    heightBy: heightSource === 'measured' ? by : null,
+    heightBy: saidBy(context, heightSource),
   }
-  return addRental(context, form, { siteId, state: 'open', sources })
+  return addRental(context, form, { siteId, state: 'open', arrivedAt: context.occurredAt, sources })
 }
 
 /** The desk takes somebody who filled in the form; a second clerk is told who was faster. */
@@ -136,8 +138,8 @@ export const takeRentalService: Does<typeof takeRental> = async (context, { rent
   return { rentalId }
 }
 
-/** Somebody does not come, or goes: open fittings are given back. */
-export const cancelRentalService: Does<typeof cancelRental> = async (context, { rentalId }) => {
+/** Somebody does not come, or goes: open fittings are given back and their items go to the racks. */
+export const cancelRentalService: Does<typeof cancelRental> = async (context, { rentalId, reason }) => {
   const { rental } = await lockRental(context, rentalId)
   if (rental.state !== 'waiting' && rental.state !== 'open')
     throw new Problem('rentals.state', { state: rental.state })
@@ -145,8 +147,9 @@ export const cancelRentalService: Does<typeof cancelRental> = async (context, { 
     .select()
     .from(fittings)
     .where(and(eq(fittings.rentalId, rentalId), inArray(fittings.state, ['claimed', 'prepared'])))
+    .orderBy(fittings.id)
     .for('update')
-  for (const fitting of open) await endFitting(context, fitting, { state: 'given_back', reason: 'no_show' })
+  for (const fitting of open) await endFitting(context, fitting, { state: 'given_back', reason })
   await context.tx
     .update(rentals)
     .set({ state: 'cancelled', version: rental.version + 1 })
@@ -155,69 +158,37 @@ export const cancelRentalService: Does<typeof cancelRental> = async (context, { 
   return { rentalId }
 }
 
-/** Other days may mean another age for the table. */
-export const changePeriodService: Does<typeof changePeriod> = async (
-  context,
-  { rentalId, startsOn, endsOn },
-) => {
-  if (endsOn < startsOn) throw new Problem('request.malformed')
+/**
+ * Other days may mean another age for the table, and a guardian; and a period that now needs an individual test puts
+ * what was fitted without one in doubt.
+ */
+export const changePeriodService: Does<typeof changePeriod> = async (context, { rentalId, ...days }) => {
   const { rental, renter, inputs } = await lockRental(context, rentalId)
+  if (rental.state === 'returned' || rental.state === 'cancelled')
+    throw new Problem('rentals.state', { state: rental.state })
+  const shop = await shopById(context.tx, context.actor.shopId)
+  const today = shopDay(shop, context.deps.now())
+  const firstDayAge = ageOnFirstDay({ birthDate: renter.birthDate, age: inputs?.age ?? null }, days.startsOn)
+  const minor = firstDayAge !== null && firstDayAge < shop.ageOfMajority && !renter.guardianName
+  refuseUnfinished([
+    ...periodProblems(days, days.startsOn === rental.startsOn ? null : today),
+    ...(minor ? [{ field: 'guardianName' as const, reason: 'minor' }] : []),
+  ])
   await context.tx
     .update(rentals)
-    .set({ startsOn, endsOn, version: rental.version + 1 })
+    .set({ ...days, version: rental.version + 1 })
     .where(eq(rentals.id, rentalId))
-  const age = tableAge({ birthDate: renter.birthDate, age: inputs.age, startsOn, endsOn })
-  await replaceInputs(context, inputs, { ...inputs, age })
+  if (inputs) {
+    const age = ageForTable({ birthDate: renter.birthDate, age: inputs.age }, days) ?? inputs.age
+    const { mass, massSource, massBy, height, heightSource, heightBy, skierType } = inputs
+    const values = { mass, massSource, massBy, height, heightSource, heightBy, skierType, age }
+    await replaceInputs(context, inputs, { ...values, ...carriedRequest(inputs, values) })
+  }
+  if (isLong(days) && !isLong(rental)) {
+    await doubtFittings(context, { renterId: renter.id }, 'renter_data_changed')
+  }
   context.touchRental(rentalId)
   return { rentalId }
 }
 
-/** The renter's own boots, as somebody read and judged them now. A head technician's judgement needs no second look. */
-export const readOwnBootsService: Does<typeof readOwnBoots> = async (context, body) => {
-  const { rental } = await lockRental(context, body.rentalId)
-  const [before] = await context.tx
-    .select()
-    .from(ownBoots)
-    .where(eq(ownBoots.rentalId, rental.id))
-    .orderBy(desc(ownBoots.recordedAt))
-    .limit(1)
-  const [row] = await context.tx
-    .insert(ownBoots)
-    .values({
-      ...body,
-      shopId: context.actor.shopId,
-      judgedBy: context.actor.personId,
-      occurredAt: context.occurredAt,
-    })
-    .returning({ id: ownBoots.id })
-  const same =
-    before &&
-    before.soleLengthMm === body.soleLengthMm &&
-    before.soleType === body.soleType &&
-    before.wear === body.wear
-  if (before && !same) await doubtFittings(context, { renterId: rental.renterId }, 'sole_changed')
-  context.touchRental(rental.id)
-  return { ownBootsId: row!.id }
-}
-
-export const secondLookService: Does<typeof secondLook> = async (context, { ownBootsId }) => {
-  const [row] = await context.tx
-    .select()
-    .from(ownBoots)
-    .where(and(eq(ownBoots.id, ownBootsId), eq(ownBoots.shopId, context.actor.shopId)))
-    .for('update')
-  if (!row) throw new Problem('items.unknown')
-  if (row.judgedBy === context.actor.personId) throw new Problem('ownBoots.same_person')
-  await context.tx
-    .update(ownBoots)
-    .set({ secondLookBy: context.actor.personId })
-    .where(eq(ownBoots.id, ownBootsId))
-  context.touchRental(row.rentalId)
-  return { ownBootsId }
-}
-
-/** Whether somebody beside the one who read the boots stands for them. */
-export const secondLookDone = (
-  row: Pick<typeof ownBoots.$inferSelect, 'secondLookBy'>,
-  judgedByRoles: readonly string[],
-) => row.secondLookBy !== null || may(judgedByRoles as Parameters<typeof may>[0], 'fittings.decide')
+const isLong = ({ startsOn, endsOn }: Period) => rentalDays(startsOn, endsOn) >= individualTestFromDays

@@ -2,13 +2,24 @@ import { z } from 'zod'
 import { soleTypes } from '#shared/compatibility/soleFit'
 import { rentalStates } from '#shared/lifecycle/fittingStates'
 import { requestSchema, skierTypeSchema } from '#shared/release/releaseInput'
-import { day, id, instant, line, note, pngDataUrl, requiredLine } from '#shared/schemas/common'
-import { guardian, renterForm, renterInputs, shoe, valueSource } from '#shared/schemas/renters'
+import { guardianRelations } from '#shared/renters/guardian'
+import { day, id, instant, line, note, pngDataUrl } from '#shared/schemas/common'
+import {
+  born,
+  contact,
+  period,
+  renterForm,
+  renterInputs,
+  renterLocale,
+  shoe,
+  valueSource,
+} from '#shared/schemas/renters'
 import { heightSchema, massSchema } from '#shared/units/bodySchemas'
 import { command, read } from './define'
 
 const rentalRow = z.object({
   id,
+  /** Short number of the day that it arrived on. */
   number: z.number().int(),
   state: z.enum(rentalStates),
   name: z.string(),
@@ -21,11 +32,12 @@ const rentalRow = z.object({
   minor: z.boolean(),
   /** The newest fitting of it, if any. */
   fitting: z.object({ id, number: z.number().int(), state: z.string(), skiPair: z.string() }).nullable(),
+  /** Skis, boots and own boots that are out. */
   out: z.number().int(),
 })
 export type RentalRow = z.infer<typeof rentalRow>
 
-/** Who is here, and whom one looks for: by part of a name, phone, short number or label. */
+/** Who is here, by promised time, and whom one looks for: by part of a name, phone, short number or label. */
 export const listRentals = read({
   path: '/api/rentals',
   access: 'renters.read',
@@ -34,7 +46,8 @@ export const listRentals = read({
     search: z.string().trim().max(80).default(''),
     site: z.union([id, z.literal('')]).default(''),
   }),
-  answer: z.object({ rows: z.array(rentalRow) }),
+  /** `more`: others match too; only the first hundred are shown. */
+  answer: z.object({ rows: z.array(rentalRow), more: z.boolean() }),
 })
 
 export const ownBoots = z.object({
@@ -45,6 +58,8 @@ export const ownBoots = z.object({
   wear: z.enum(['sound', 'worn']),
   judgedBy: z.string(),
   judgedById: id,
+  /** Judged by a head technician, who needs no second look. */
+  judgedByHead: z.boolean(),
   secondLookBy: z.string().nullable(),
   at: instant,
 })
@@ -57,10 +72,11 @@ export const rentalDetail = rentalRow.extend({
     lastName: z.string(),
     email: z.string().nullable(),
     phone: z.string().nullable(),
-    locale: z.string(),
+    locale: renterLocale,
     birthDate: day.nullable(),
     guardianName: z.string().nullable(),
-    guardianRelation: z.string().nullable(),
+    guardianRelation: z.enum(guardianRelations).nullable(),
+    guardianPhone: z.string().nullable(),
     version: z.number().int(),
   }),
   inputs: renterInputs.nullable(),
@@ -103,6 +119,13 @@ export const rentalDetail = rentalRow.extend({
       ownBootsId: id.nullable(),
     }),
   ),
+  /** What of the shop's settings the renter's data are judged with. */
+  shop: z.object({
+    today: day,
+    ageOfMajority: z.number().int(),
+    nearMassKg: z.number().int(),
+    nearHeightCm: z.number().int(),
+  }),
 })
 export type RentalDetail = z.infer<typeof rentalDetail>
 
@@ -113,12 +136,37 @@ export const getRental = read({
   answer: rentalDetail,
 })
 
+/** What the desk needs to know before it types a walk-in. */
+export const getRentalFormFacts = read({
+  path: '/api/rental-form',
+  access: 'renters.write',
+  answer: z.object({
+    shop: z.string(),
+    today: day,
+    ageOfMajority: z.number().int(),
+    nearMassKg: z.number().int(),
+    nearHeightCm: z.number().int(),
+    promiseMinutes: z.number().int(),
+    sentencesReviewed: z.boolean(),
+  }),
+})
+export type RentalFormFacts = z.infer<typeof getRentalFormFacts.answer>
+
+/** The renter chose how they ski, on the turned screen: the shop may not choose it for them. */
+const chosenByRenter = z.literal(true)
+
 /** A walk-in typed at the desk. */
 export const createRental = command({
   kind: 'rentals.create',
   path: '/api/rentals/create',
   access: 'renters.write',
-  body: z.strictObject({ siteId: id, form: renterForm, massSource: valueSource, heightSource: valueSource }),
+  body: z.strictObject({
+    siteId: id,
+    form: renterForm,
+    massSource: valueSource,
+    heightSource: valueSource,
+    skierTypeByRenter: chosenByRenter,
+  }),
   ids: z.object({ rentalId: id, renterId: id }),
 })
 
@@ -130,36 +178,33 @@ export const takeRental = command({
   ids: z.object({ rentalId: id }),
 })
 
+/** They did not come, or want nothing after all: what is held for them goes back to the racks. */
 export const cancelRental = command({
   kind: 'rentals.cancel',
   path: '/api/rentals/cancel',
   access: 'renters.write',
-  body: z.strictObject({ rentalId: id }),
+  body: z.strictObject({ rentalId: id, reason: z.enum(['no_show', 'given_back']) }),
   ids: z.object({ rentalId: id }),
 })
 
+/** Names, addresses, language, guardian: nothing of it voids a fitting. */
 export const changeContact = command({
   kind: 'renters.changeContact',
   path: '/api/renters/contact',
   access: 'renters.write',
-  body: z.strictObject({
-    rentalId: id,
-    version: z.int(),
-    firstName: requiredLine(60),
-    lastName: requiredLine(60),
-    email: z.union([z.literal(''), z.email().max(200)]),
-    phone: line(40),
-    guardian: guardian.nullable(),
-  }),
+  body: contact.extend({ rentalId: id, version: z.int() }),
   ids: z.object({ renterId: id }),
 })
 
-/** A new value of what a fitting is computed from. The skier type is the renter's own choice. */
+/**
+ * What a fitting is computed from, of the renter's own. A changed value voids the renter's open fittings; the same
+ * value, now measured, does not.
+ */
 export const changeInputs = command({
   kind: 'renters.changeInputs',
   path: '/api/renters/inputs',
   access: 'renters.write',
-  body: z.strictObject({
+  body: born.extend({
     rentalId: id,
     /** The inputs that the screen showed. */
     seenInputsId: id,
@@ -167,9 +212,8 @@ export const changeInputs = command({
     massSource: valueSource,
     height: heightSchema,
     heightSource: valueSource,
-    birthDate: day.nullable(),
-    age: z.int().min(0).max(120),
     skierType: skierTypeSchema,
+    skierTypeByRenter: chosenByRenter,
   }),
   ids: z.object({ inputsId: id }),
 })
@@ -193,7 +237,7 @@ export const changePeriod = command({
   kind: 'rentals.changePeriod',
   path: '/api/rentals/period',
   access: 'renters.write',
-  body: z.strictObject({ rentalId: id, startsOn: day, endsOn: day }),
+  body: period.extend({ rentalId: id }),
   ids: z.object({ rentalId: id }),
 })
 
@@ -211,7 +255,7 @@ export const readOwnBoots = command({
   ids: z.object({ ownBootsId: id }),
 })
 
-/** Somebody else of the workshop looked too; or a head technician, who needs no second. */
+/** Somebody else of the workshop looked too and says the same. Who does not reads them anew. */
 export const secondLook = command({
   kind: 'ownBoots.secondLook',
   path: '/api/own-boots/second-look',
