@@ -3,7 +3,7 @@ import vue from '@vitejs/plugin-vue'
 import VueI18n from '@intlify/unplugin-vue-i18n/vite'
 import { defineConfig } from 'vite'
 
-const server = `http://127.0.0.1:${process.env.API_PORT ?? 4310}`
+const server = `http://127.0.0.1:${process.env.PORT ?? 4310}`
 
 export default defineConfig({
   plugins: [

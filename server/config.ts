@@ -1,25 +1,41 @@
+import fs from 'node:fs'
 import path from 'node:path'
+import { fileURLToPath } from 'node:url'
 
-/** What the start is told by its environment and arguments; the one reader of `process.env`. */
+/** What the start is told by its environment and arguments. */
 export interface Config {
   host: string
   port: number
   /** The demo shop, or a shop of one's own. */
   demo: boolean
-  loopback: boolean
+  /** `notchwise_demo` or `notchwise_shop`. */
+  database: string
   dataDir: string
   logLevel: string
+  /** Vite serves the client, with its own server in front of this one. */
+  viteServes: boolean
+  /** Under tests a test_ database may run without durability. */
+  testing: boolean
   /** What this way of serving lacks, said at the start; empty on loopback. */
   lost: string[]
 }
 
 export class ConfigError extends Error {}
 
-const root = path.resolve(new URL('..', import.meta.url).pathname)
+type Env = Record<string, string | undefined>
+
+const root = fileURLToPath(new URL('..', import.meta.url))
+
+/** The environment, and below it the lines of a `.env` file; the one reader of `process.env`. */
+export function environment(): Env {
+  const file = path.join(root, '.env')
+  if (fs.existsSync(file)) process.loadEnvFile(file)
+  return process.env
+}
 
 /** Reads the configuration; what cannot work is refused with a sentence that says what to do. */
-export function readConfig(env: NodeJS.ProcessEnv, args: readonly string[]): Config {
-  const unknown = args.filter((arg) => arg !== '--real')
+export function readConfig(env: Env, args: readonly string[]): Config {
+  const unknown = args.filter((arg) => arg !== '--real' && arg !== '--vite-serves')
   if (unknown.length > 0)
     throw new ConfigError(`Unknown: ${unknown.join(' ')}. The start takes --real and nothing else.`)
   if (env.DATABASE_URL) {
@@ -28,31 +44,50 @@ export function readConfig(env: NodeJS.ProcessEnv, args: readonly string[]): Con
     )
   }
   const host = env.HOST || '127.0.0.1'
-  const port = Number(env.PORT || 4310)
-  if (!Number.isInteger(port) || port < 0 || port > 65535)
-    throw new ConfigError(`PORT is ${env.PORT}; it is a number from 1 to 65535.`)
   const loopback = isLoopback(host)
   if (!loopback && env.PLAIN_HTTP !== '1') {
     throw new ConfigError(
       `HOST=${host} is reached from other machines, and there is no TLS yet. PLAIN_HTTP=1 serves it all the same; then passwords and people's data cross the network unprotected.`,
     )
   }
+  const demo = loopback && !args.includes('--real')
   return {
     host,
-    port,
-    loopback,
-    demo: loopback && !args.includes('--real'),
+    port: readPort(env.PORT),
+    demo,
+    database: demo ? 'notchwise_demo' : 'notchwise_shop',
     dataDir: path.resolve(root, env.NOTCHWISE_DATA || '.data'),
-    logLevel: env.LOG_LEVEL || 'warn',
-    lost: loopback
-      ? []
-      : [
-          'camera scanning',
-          'work without a network',
-          'keeping the screen awake',
-          'cookies that only travel encrypted',
-        ],
+    logLevel: readLogLevel(env.LOG_LEVEL),
+    viteServes: args.includes('--vite-serves'),
+    testing: env.NODE_ENV === 'test',
+    lost: loopback ? [] : lostWithoutTls,
   }
+}
+
+const lostWithoutTls = [
+  'passwords and people’s data that nobody on the network can read',
+  'cookies that only travel encrypted',
+  'camera scanning',
+  'work without a network',
+  'keeping the screen awake',
+]
+
+/** 0 stands for any free port. */
+function readPort(text = ''): number {
+  if (text === '') return 4310
+  const port = Number(text)
+  if (!/^\d+$/.test(text) || port > 65535)
+    throw new ConfigError(`PORT is ${text}; it is a number from 1 to 65535.`)
+  return port
+}
+
+const logLevels = ['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent']
+
+function readLogLevel(text = ''): string {
+  if (text === '') return 'warn'
+  if (!logLevels.includes(text))
+    throw new ConfigError(`LOG_LEVEL is ${text}; it is one of ${logLevels.join(', ')}.`)
+  return text
 }
 
 /** Whether only this machine reaches that address. */

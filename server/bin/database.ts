@@ -1,16 +1,19 @@
-import fs from 'node:fs'
 import path from 'node:path'
-import { readConfig } from '../config'
+import { environment, readConfig, type Config } from '../config'
 import { startCluster, type Cluster } from '../postgres/cluster'
 import { ensureDatabase, type Database } from '../postgres/roles'
+import { makeDataDir } from './dataDir'
 
 /** The private cluster for one command: a running one is used and left running, another is started and stopped. */
-export async function withCluster<T>(work: (cluster: Cluster) => Promise<T>): Promise<T> {
-  const { dataDir } = readConfig(process.env, [])
-  fs.mkdirSync(dataDir, { recursive: true })
-  const cluster = await startCluster(path.join(dataDir, 'postgres'), { say: console.log })
+export async function withCluster<T>(
+  args: readonly string[],
+  work: (cluster: Cluster, config: Config) => Promise<T>,
+): Promise<T> {
+  const config = readConfig(environment(), args)
+  makeDataDir(config.dataDir)
+  const cluster = await startCluster(path.join(config.dataDir, 'postgres'), { say: console.log })
   try {
-    return await work(cluster)
+    return await work(cluster, config)
   } finally {
     await cluster.stop()
   }
@@ -21,6 +24,7 @@ export function withDatabase<T>(
   args: readonly string[],
   work: (database: Database) => Promise<T>,
 ): Promise<T> {
-  const name = readConfig(process.env, args).demo ? 'notchwise_demo' : 'notchwise_shop'
-  return withCluster(async (cluster) => work(await ensureDatabase(cluster.setupUrl, name)))
+  return withCluster(args, async (cluster, config) =>
+    work(await ensureDatabase(cluster.setupUrl, config.database)),
+  )
 }

@@ -2,11 +2,16 @@ import { spawn } from 'node:child_process'
 import path from 'node:path'
 import { root } from './clientBuild'
 
-// The server with its demo shop, restarted on change, and Vite's own server before it on port 4320.
+// The server with its demo shop, restarted on change, and Vite's own server in front of it on port 4320.
 const programs = [
-  [process.execPath, '--watch-path=server', '--watch-path=shared', '--import', 'tsx', 'server/bin/start.ts'],
-  [process.execPath, path.join(root, 'node_modules/vite/bin/vite.js')],
-] as const
-const children = programs.map(([command, ...args]) => spawn(command, args, { cwd: root, stdio: 'inherit' }))
-for (const child of children) child.once('exit', () => children.forEach((other) => other.kill('SIGTERM')))
-for (const signal of ['SIGINT', 'SIGTERM'] as const) process.on(signal, () => undefined)
+  [
+    ...['--watch-path=server', '--watch-path=shared', '--watch-preserve-output', '--import', 'tsx'],
+    ...['server/bin/start.ts', '--vite-serves'],
+  ],
+  [path.join(root, 'node_modules/vite/bin/vite.js')],
+]
+const children = programs.map((args) => spawn(process.execPath, args, { cwd: root, stdio: 'inherit' }))
+const endAll = () => children.forEach((child) => child.kill('SIGTERM'))
+for (const child of children) child.once('exit', endAll)
+for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) process.on(signal, endAll)
+process.on('disconnect', endAll)

@@ -1,4 +1,4 @@
-/** Says a step's name when it takes over a second, and how long it took. */
+/** Says a step's name when it takes over a second, and how long it took in all. */
 export async function step<T>(name: string, work: () => Promise<T> | T): Promise<T> {
   const started = Date.now()
   let said = false
@@ -7,9 +7,10 @@ export async function step<T>(name: string, work: () => Promise<T> | T): Promise
     console.log(`${name} ...`)
   }, 1000)
   try {
-    return await work()
+    const result = await work()
+    if (said) console.log(`${name}: ${((Date.now() - started) / 1000).toFixed(1)} s`)
+    return result
   } finally {
     clearTimeout(late)
-    if (said) console.log(`${name}: ${((Date.now() - started) / 1000).toFixed(1)} s`)
   }
 }

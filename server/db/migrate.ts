@@ -1,8 +1,9 @@
+import { fileURLToPath } from 'node:url'
 import { drizzle } from 'drizzle-orm/node-postgres'
 import { migrate } from 'drizzle-orm/node-postgres/migrator'
 import pg from 'pg'
 
-const folder = new URL('../../drizzle', import.meta.url).pathname
+const folder = fileURLToPath(new URL('../../drizzle', import.meta.url))
 
 /**
  * Brings a database to the newest schema, as its owner. Starters that meet wait for each other; a lock that a
