@@ -3,6 +3,7 @@ import { alias } from 'drizzle-orm/pg-core'
 import type { AnswerOf } from '#shared/api/define'
 import type { listRentals, RentalRow } from '#shared/api/rentals'
 import type { RentalState } from '#shared/lifecycle/fittingStates'
+import { ageOnFirstDay } from '#shared/renters/formRules'
 import type { Reader } from '../../deps'
 import { fittingInputs, people, rentals, renters, shops } from '../schema/schema'
 import { contains, iso } from './lists'
@@ -19,10 +20,6 @@ const shown: Record<Asked['show'], RentalState[]> = {
   all: ['waiting', 'open', 'out', 'returned', 'cancelled'],
 }
 
-/** Whether the guardian signs: under the shop's age of majority on the first day. */
-const minor = sql<boolean>`coalesce(case when ${renters.birthDate} is null then ${fittingInputs.age} < ${shops.ageOfMajority}
-  else (${renters.birthDate} + make_interval(years => ${shops.ageOfMajority}))::date > ${rentals.startsOn} end, false)`
-
 export const rentalColumns = {
   id: rentals.id,
   number: rentals.number,
@@ -34,7 +31,9 @@ export const rentalColumns = {
   arrivedAt: rentals.arrivedAt,
   promisedAt: rentals.promisedAt,
   takenBy: clerk.name,
-  minor,
+  birthDate: renters.birthDate,
+  age: fittingInputs.age,
+  ageOfMajority: shops.ageOfMajority,
   fitting: sql<
     RentalRow['fitting']
   >`(select jsonb_build_object('id', f.id, 'number', f.number, 'state', f.state, 'skiPair', p.code)
@@ -42,12 +41,24 @@ export const rentalColumns = {
   out: sql<number>`(select count(*)::int from rental_items i where i.rental_id = ${rentals.id} and i.back_at is null)`,
 }
 
-export function rentalRow<R extends { state: string; arrivedAt: Date; promisedAt: Date }>(row: R) {
+interface Selected {
+  state: string
+  startsOn: string
+  arrivedAt: Date
+  promisedAt: Date
+  birthDate: string | null
+  age: number | null
+  ageOfMajority: number
+}
+
+/** A row as it travels. A minor is under the shop's age of majority on the first day: the guardian signs. */
+export function rentalRow<R extends Selected>({ birthDate, age, ageOfMajority, ...row }: R) {
   return {
     ...row,
     state: row.state as RentalState,
     arrivedAt: iso(row.arrivedAt),
     promisedAt: iso(row.promisedAt),
+    minor: (ageOnFirstDay({ birthDate, age }, row.startsOn) ?? ageOfMajority) < ageOfMajority,
   }
 }
 
