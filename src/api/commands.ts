@@ -60,7 +60,7 @@ export function noteServerTime(serverTime: Date, now: Date) {
  * after a few tries, `NotSent` is thrown and its `again` sends the very same command.
  */
 export function sendCommand<Body, Ids>(
-  command: Pick<Command<string, Body, Ids>, 'kind' | 'path'>,
+  command: Command<string, Body, Ids>,
   body: NoInfer<Body>,
   { pin, link }: { pin?: string; link?: string } = {},
 ): Promise<CommandAnswer<Ids>> {
