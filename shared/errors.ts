@@ -13,6 +13,7 @@ export const problems = {
 
   'session.missing': 401,
   'session.wrong_credentials': 401,
+  'session.wrong_password': 403,
   'session.role': 403,
   'session.shop': 404,
   'session.switched': 409,

@@ -10,6 +10,11 @@ export interface SessionUser {
   id: string
 }
 
+/** What a sign-in proved; only the id enters the session. */
+export interface SignedIn extends SessionUser {
+  passwordHash: string
+}
+
 /** E-mail and password; a disabled person is answered like an unknown one. */
 export function passportFor(deps: Pick<Deps, 'db'>) {
   const passport = new Passport()
@@ -26,13 +31,17 @@ export function passportFor(deps: Pick<Deps, 'db'>) {
   return passport
 }
 
-async function signInPerson(deps: Pick<Deps, 'db'>, email: string, password: string) {
+async function signInPerson(
+  deps: Pick<Deps, 'db'>,
+  email: string,
+  password: string,
+): Promise<SignedIn | null> {
   const [person] = await deps.db
     .select({ id: people.id, passwordHash: people.passwordHash, disabledAt: people.disabledAt })
     .from(people)
     .where(sql`lower(${people.email}) = lower(${email})`)
   const fits = await secretFits(password, person && !person.disabledAt ? person.passwordHash : null)
-  return person && fits ? { id: person.id } : null
+  return person && fits ? { id: person.id, passwordHash: person.passwordHash } : null
 }
 
 export type AppPassport = ReturnType<typeof passportFor>

@@ -6,6 +6,10 @@ import type { Deps } from '../deps'
 declare module 'express-session' {
   interface SessionData {
     shopId: string
+    /** When this person went on, on the server's clock. */
+    startedAt: string
+    /** The enrolled device that this session belongs to. */
+    deviceId: string
   }
 }
 

@@ -38,17 +38,26 @@ export type SignedBy<Body> = (body: Body, actor: PersonActor) => string | null
 /** For commands that whoever acts signs with their own PIN. */
 export const byOwnPin: SignedBy<unknown> = (_body, actor) => actor.personId
 
+export interface CommandOptions<Body> {
+  signedBy?: SignedBy<Body>
+  /** What must follow once the command took effect, sent again or not: ending sessions, say. */
+  afterwards?: (deps: Deps, actor: PersonActor, body: Body) => Promise<void> | void
+}
+
 /** The route of a command: parse the envelope, run the service once, answer its ids and event. */
 export function does<Body, Ids>(
   definition: Command<string, Body, Ids>,
   service: Service<Body, Ids, PersonActor>,
-  { signedBy }: { signedBy?: SignedBy<NoInfer<Body>> } = {},
+  { signedBy, afterwards }: CommandOptions<NoInfer<Body>> = {},
 ): Route {
-  return commandRoute<Body, Ids, PersonActor>(definition, service, async (deps, actor, body) => {
-    if (!signedBy) return
-    const personId = signedBy(body, actor)
-    if (personId) await provePin(deps, actor, personId)
-    actor.provedPinOf = personId
+  return commandRoute<Body, Ids, PersonActor>(definition, service, {
+    before: async (deps, actor, body) => {
+      if (!signedBy) return
+      const personId = signedBy(body, actor)
+      if (personId) await provePin(deps, actor, personId)
+      actor.provedPinOf = personId
+    },
+    afterwards,
   })
 }
 
@@ -63,7 +72,10 @@ export function doesByLink<Body, Ids>(
 function commandRoute<Body, Ids, A extends PersonActor | LinkActor>(
   definition: Command<string, Body, Ids>,
   service: Service<Body, Ids, A>,
-  before: (deps: Deps, actor: A, body: Body) => Promise<void> = () => Promise.resolve(),
+  around: {
+    before?: (deps: Deps, actor: A, body: Body) => Promise<void>
+    afterwards?: (deps: Deps, actor: A, body: Body) => Promise<void> | void
+  } = {},
 ): Route {
   const schema = envelope(definition)
   return {
@@ -74,8 +86,10 @@ function commandRoute<Body, Ids, A extends PersonActor | LinkActor>(
     handle: (deps) => async (req, res) => {
       const command = schema.parse(req.body) as Envelope<Body>
       const actor = actorOf<A>(req)
-      await before(deps, actor, command.body)
-      res.status(201).json(await runCommand(deps, actor, command, service))
+      await around.before?.(deps, actor, command.body)
+      const answer = await runCommand(deps, actor, command, service)
+      await around.afterwards?.(deps, actor, command.body)
+      res.status(201).json(answer)
     },
   }
 }

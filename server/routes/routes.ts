@@ -7,12 +7,16 @@ import { fittingRoutes } from './fittings'
 import { returnsRoutes } from './returns'
 import type { Route } from './route'
 import { thingsRoutes } from './things'
-import { sessionRoutes } from './session'
+import { officeRoutes } from './office'
+import { openApiRoute } from './openApi'
+import { doorRoutes, sessionRoutes } from './session'
 
 /** Every route of the API, in the order of the day. */
 export function routes(passport: AppPassport): Route[] {
-  return [
+  const described = [
     ...sessionRoutes(passport),
+    ...doorRoutes,
+    ...officeRoutes,
     ...boardRoutes,
     ...formRoutes,
     ...rentalRoutes,
@@ -21,4 +25,5 @@ export function routes(passport: AppPassport): Route[] {
     ...returnsRoutes,
     ...callBackRoutes,
   ]
+  return [...described, openApiRoute(described)]
 }

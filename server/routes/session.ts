@@ -1,14 +1,30 @@
-import type { Request } from 'express'
-import { sessionAnswer, signInBody } from '#shared/api/session'
-import { signInLimit } from '../auth/limits'
-import type { AppPassport, SessionUser } from '../auth/passport'
+import {
+  demoAnswer,
+  ownPasswordBody,
+  ownPinBody,
+  sessionAnswer,
+  setupAnswer,
+  setupBody,
+  signInBody,
+  stationAnswer,
+  switchBody,
+} from '#shared/api/session'
+import { enrolledDevice } from '../auth/actors'
+import { guessLimit, secretLimit, signInLimit } from '../auth/limits'
+import type { AppPassport } from '../auth/passport'
 import { sessionCookie } from '../auth/session'
+import { authenticated, endSession, requireSamePassword, startSession } from '../auth/signIn'
 import { Problem } from '../errors'
-import { personActor } from '../auth/actors'
-import { homeShop, sessionOf } from '../services/sessions'
+import { actorOf } from '../middleware/access'
+import type { PersonActor } from '../services/actor'
+import { demoSignIns } from '../services/demo'
+import { provePin, setPin, unlockPin } from '../services/pins'
+import { changeOwnPassword, homeShop, requirePassword, sessionOf } from '../services/sessions'
+import { setUpShop, setupIsOpen } from '../services/setup'
+import { stationOf } from '../services/stations'
 import type { Route } from './route'
 
-/** Signing in and out, and who is signed in. */
+/** Signing in and out, who is signed in, and a person's own password and PIN. */
 export function sessionRoutes(passport: AppPassport): Route[] {
   return [
     {
@@ -29,10 +45,9 @@ export function sessionRoutes(passport: AppPassport): Route[] {
       handle: (deps) => async (req, res, next) => {
         signInBody.parse(req.body)
         const user = await authenticated(passport, req, res, next)
-        const shopId = await homeShop(deps, user.id)
-        await startSession(req, user, shopId)
-        const actor = await personActor(deps, req)
-        if (!actor) throw new Problem('session.wrong_credentials')
+        const actor = await startSession(deps, req, user.id, await homeShop(deps, user.id))
+        await requireSamePassword(deps, req, user)
+        await unlockPin(deps, user.id)
         res.status(201).json(sessionAnswer.parse(await sessionOf(deps, actor)))
       },
     },
@@ -43,39 +58,99 @@ export function sessionRoutes(passport: AppPassport): Route[] {
       schemas: {},
       handle: (deps) => async (req, res) => {
         const sessionId = req.sessionID
-        await new Promise<void>((done, failed) =>
-          req.session.destroy((e: unknown) => (e ? failed(e as Error) : done())),
-        )
+        await endSession(req)
         deps.dropSockets({ sessionId })
         res.clearCookie(sessionCookie).status(204).end()
+      },
+    },
+    {
+      method: 'post',
+      path: '/api/session/pin',
+      access: 'signed_in',
+      schemas: { body: ownPinBody },
+      before: [guessLimit('own-pin')],
+      handle: (deps) => async (req, res) => {
+        const { password, pin } = ownPinBody.parse(req.body)
+        const actor = actorOf<PersonActor>(req)
+        await requirePassword(deps, actor.personId, password)
+        await setPin(deps, actor, pin)
+        res.status(204).end()
+      },
+    },
+    {
+      method: 'post',
+      path: '/api/session/password',
+      access: 'signed_in',
+      schemas: { body: ownPasswordBody },
+      before: [guessLimit('own-password')],
+      handle: (deps) => async (req, res) => {
+        const { password, newPassword } = ownPasswordBody.parse(req.body)
+        const { personId } = actorOf<PersonActor>(req)
+        await requirePassword(deps, personId, password)
+        await changeOwnPassword(deps, personId, newPassword, req.sessionID)
+        res.status(204).end()
       },
     },
   ]
 }
 
-function authenticated(
-  passport: AppPassport,
-  req: Request,
-  res: Parameters<ReturnType<Route['handle']>>[1],
-  next: Parameters<ReturnType<Route['handle']>>[2],
-): Promise<SessionUser> {
-  return new Promise((done, failed) => {
-    const check = passport.authenticate('local', (error: unknown, user: SessionUser | false) => {
-      if (error) failed(error as Error)
-      else if (!user) failed(new Problem('session.wrong_credentials'))
-      else done(user)
-    }) as (...args: unknown[]) => void
-    check(req, res, next)
-  })
-}
-
-/** A new session id for a new person: what somebody planted before is worth nothing. */
-export function startSession(req: Request, user: SessionUser, shopId: string): Promise<void> {
-  return new Promise((done, failed) => {
-    req.login(user, (error: unknown) => {
-      if (error) return failed(error as Error)
-      req.session.shopId = shopId
-      req.session.save((e: unknown) => (e ? failed(e as Error) : done()))
-    })
-  })
-}
+/** What a browser may ask before anybody is signed in: the station it is, the demo's sign-ins, the first start. */
+export const doorRoutes: Route[] = [
+  {
+    method: 'get',
+    path: '/api/station',
+    access: 'open',
+    schemas: { answer: stationAnswer },
+    handle: (deps) => async (req, res) => {
+      const device = await enrolledDevice(deps, req)
+      const { actor, sessionID: sessionId } = req
+      const here = actor?.kind === 'person' ? { personId: actor.personId, sessionId } : null
+      res.json(stationAnswer.parse(device ? await stationOf(deps, device.id, here) : null))
+    },
+  },
+  {
+    method: 'post',
+    path: '/api/session/switch',
+    access: 'open',
+    schemas: { body: switchBody, answer: sessionAnswer },
+    handle: (deps) => async (req, res) => {
+      const { personId, pin } = switchBody.parse(req.body)
+      const device = await enrolledDevice(deps, req)
+      if (!device) throw new Problem('pin.not_enrolled')
+      const { shopId } = device
+      await provePin(deps, { shopId, deviceId: device.id, pin }, personId)
+      const actor = await startSession(deps, req, personId, shopId)
+      res.status(201).json(sessionAnswer.parse(await sessionOf(deps, actor)))
+    },
+  },
+  {
+    method: 'get',
+    path: '/api/session/demo',
+    access: 'open',
+    schemas: { answer: demoAnswer },
+    handle: (deps) => async (_req, res) => {
+      res.json(demoAnswer.parse(await demoSignIns(deps)))
+    },
+  },
+  {
+    method: 'get',
+    path: '/api/setup',
+    access: 'open',
+    schemas: { answer: setupAnswer },
+    handle: (deps) => async (_req, res) => {
+      res.json({ open: await setupIsOpen(deps.db) })
+    },
+  },
+  {
+    method: 'post',
+    path: '/api/setup',
+    access: 'open',
+    schemas: { body: setupBody, answer: sessionAnswer },
+    before: [secretLimit()],
+    handle: (deps) => async (req, res) => {
+      const { personId, shopId } = await setUpShop(deps, setupBody.parse(req.body))
+      const actor = await startSession(deps, req, personId, shopId)
+      res.status(201).json(sessionAnswer.parse(await sessionOf(deps, actor)))
+    },
+  },
+]

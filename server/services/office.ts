@@ -1,14 +1,17 @@
 import { officeChanges } from '../db/schema/schema'
-import { deviceIdOf, personIdOf } from './actor'
-import type { CommandContext } from './commands'
+import type { Tx } from '../deps'
+import { deviceIdOf, personIdOf, type Actor } from './actor'
+
+/** A command, or a request of the office that is none: then without its id. */
+interface Change {
+  tx: Tx
+  actor: Actor
+  commandId: string | null
+  occurredAt: Date
+}
 
 /** Writes down that somebody changed these fields of a thing, a person or a setting: names of fields, no values. */
-export async function noteOfficeChange(
-  context: CommandContext,
-  kind: string,
-  subjectId: string,
-  fields: string[],
-) {
+export async function noteOfficeChange(context: Change, kind: string, subjectId: string, fields: string[]) {
   await context.tx.insert(officeChanges).values({
     shopId: context.actor.shopId,
     kind,

@@ -1,6 +1,7 @@
-import { and, asc, eq, isNull, ne } from 'drizzle-orm'
+import { and, asc, desc, eq, isNull, ne, notInArray, sql } from 'drizzle-orm'
 import { permissionsOf } from '#shared/permissions'
 import type { SessionAnswer } from '#shared/api/session'
+import { hashSecret, secretFits } from '../auth/passwords'
 import { devices, memberships, people, session, shops, sites } from '../db/schema/schema'
 import type { Deps } from '../deps'
 import { Problem } from '../errors'
@@ -59,4 +60,53 @@ export async function endSessions(deps: Deps, personId: string, except?: string)
     .delete(session)
     .where(and(eq(session.personId, personId), except ? ne(session.sid, except) : undefined))
   deps.dropSockets({ personId })
+}
+
+const atDevice = (deviceId: string) => sql`${session.sess} ->> 'deviceId' = ${deviceId}`
+
+/** Ends whatever session is open at a device. */
+export async function endSessionsAt(deps: Deps, deviceId: string) {
+  const ended = await deps.db.delete(session).where(atDevice(deviceId)).returning({ sid: session.sid })
+  for (const { sid } of ended) deps.dropSockets({ sessionId: sid })
+}
+
+/**
+ * One person at a time at a device: keeps its latest session and ends the others, whoever asks. Of two who go on in
+ * the same moment both calls keep the same one.
+ */
+export async function keepOneSessionAt(deps: Deps, deviceId: string) {
+  const latest = deps.db
+    .select({ sid: session.sid })
+    .from(session)
+    .where(atDevice(deviceId))
+    .orderBy(desc(sql`${session.sess} ->> 'startedAt'`), desc(session.sid))
+    .limit(1)
+  const ended = await deps.db
+    .delete(session)
+    .where(and(atDevice(deviceId), notInArray(session.sid, latest)))
+    .returning({ sid: session.sid })
+  for (const { sid } of ended) deps.dropSockets({ sessionId: sid })
+}
+
+/** Whether this session still stands. */
+export async function sessionStands(deps: Pick<Deps, 'db'>, sid: string): Promise<boolean> {
+  return (await deps.db.$count(session, eq(session.sid, sid))) > 0
+}
+
+/** Refuses with session.wrong_password unless this is the person's password. */
+export async function requirePassword(deps: Pick<Deps, 'db'>, personId: string, password: string) {
+  const [person] = await deps.db
+    .select({ passwordHash: people.passwordHash })
+    .from(people)
+    .where(eq(people.id, personId))
+  if (!(await secretFits(password, person?.passwordHash ?? null))) throw new Problem('session.wrong_password')
+}
+
+/** A person's own new password; their sessions elsewhere end. */
+export async function changeOwnPassword(deps: Deps, personId: string, password: string, sessionId: string) {
+  await deps.db
+    .update(people)
+    .set({ passwordHash: await hashSecret(password) })
+    .where(eq(people.id, personId))
+  await endSessions(deps, personId, sessionId)
 }

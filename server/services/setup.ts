@@ -7,6 +7,7 @@ import { memberships, people, setupCodes, shops, shopSequences, shopTexts, sites
 import type { Deps, Reader } from '../deps'
 import { Problem } from '../errors'
 import { defaultTexts } from './defaultTexts'
+import { textSha256 } from './texts'
 
 const codeHash = (code: string) =>
   createHash('sha256').update(code.replaceAll(/[\s-]/g, '').toUpperCase()).digest()
@@ -51,21 +52,21 @@ export async function setUpShop(
     await tx.update(setupCodes).set({ usedAt: deps.now() }).where(eq(setupCodes.id, open.id))
     const [shop] = await tx
       .insert(shops)
-      .values({ name: body.shopName, zone: body.zone })
+      .values({ name: body.shopName, zone: body.zone, locale: body.locale })
       .returning({ id: shops.id })
     const shopId = shop!.id
     await tx.insert(shopSequences).values({ shopId })
     await tx.insert(sites).values({ shopId, name: body.siteName })
     const [person] = await tx
       .insert(people)
-      .values({ name: body.name, email: body.email, passwordHash })
+      .values({ name: body.name, email: body.email, passwordHash, locale: body.locale })
       .returning({ id: people.id })
     await tx.insert(memberships).values({ shopId, personId: person!.id, roles: ['manager'] })
     const texts = defaultTexts().map((text) => ({
       ...text,
       shopId,
       version: 1,
-      sha256: createHash('sha256').update(text.body, 'utf8').digest('hex'),
+      sha256: textSha256(text.body),
     }))
     await tx.insert(shopTexts).values(texts)
     return { personId: person!.id, shopId }
