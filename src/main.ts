@@ -1,4 +1,14 @@
+import { createPinia } from 'pinia'
 import { createApp } from 'vue'
+import './assets/fonts.css'
+import './assets/tokens.css'
+import './assets/base.css'
+import './assets/print.css'
 import App from './App.vue'
+import { i18n } from './i18n/i18n'
+import { router } from './router'
 
-createApp(App).mount('#app')
+document.documentElement.lang = i18n.global.locale.value
+
+// Nothing of the component library here: the renter's phone loads this file.
+createApp(App).use(createPinia()).use(i18n).use(router).mount('#app')

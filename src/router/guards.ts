@@ -1,0 +1,64 @@
+import type { RouteLocationNormalized, RouteLocationRaw, Router } from 'vue-router'
+import { ApiProblem } from '../api/http'
+import { i18n, loadTexts } from '../i18n/i18n'
+import { loadLayout, type LayoutName } from '../layouts/layouts'
+import { useSessionStore } from '../stores/session'
+
+/** Texts that every view of a layout may need. The renter's phone carries none of the staff's. */
+const layoutTexts: Record<LayoutName, readonly string[]> = {
+  staff: ['problems', 'staffProblems', 'staff', 'rule'],
+  bench: ['problems', 'staffProblems', 'staff', 'rule'],
+  print: ['problems', 'staffProblems', 'staff', 'rule'],
+  plain: ['problems'],
+  renter: ['problems'],
+}
+
+const layoutName = (to: RouteLocationNormalized): LayoutName => to.meta.layout ?? 'staff'
+
+/** Who is not signed in signs in first and comes back; whose role does not do this is told who can. */
+async function admit(to: RouteLocationNormalized, router: Router): Promise<RouteLocationRaw | true> {
+  if (to.meta.access === 'open') return true
+  const session = useSessionStore()
+  try {
+    await session.load()
+  } catch (error) {
+    if (error instanceof ApiProblem) return { name: 'unreachable', query: { next: to.fullPath } }
+    throw error
+  }
+  if (!session.session) {
+    return router.hasRoute('sign-in')
+      ? { name: 'sign-in', query: { next: to.fullPath } }
+      : { name: 'not-found', params: { path: ['sign-in'] } }
+  }
+  const { permission } = to.meta
+  return !permission || session.may(permission) || { name: 'role-cannot', query: { permission } }
+}
+
+export function installGuards(router: Router) {
+  router.beforeEach((to) => admit(to, router))
+
+  router.beforeResolve(async (to) => {
+    const layout = layoutName(to)
+    await Promise.all([loadLayout(layout), loadTexts([...layoutTexts[layout], ...(to.meta.texts ?? [])])])
+  })
+
+  router.afterEach((to, from, failure) => {
+    if (failure) return
+    const { t } = i18n.global
+    document.title = to.meta.title ? `${t(to.meta.title)} · Notchwise` : 'Notchwise'
+    // After a change of page the keyboard starts at its content; on the first page it starts where browsers start.
+    if (from.matched.length > 0 && to.name !== from.name) {
+      requestAnimationFrame(() => document.getElementById('content')?.focus({ preventScroll: true }))
+    }
+  })
+
+  // A new build has other file names: the page is fetched anew, once.
+  router.onError((error: Error, to) => {
+    const lostFile = /dynamically imported module|Importing a module script failed|preload CSS/i.test(
+      error.message,
+    )
+    if (!lostFile || sessionStorage.getItem('notchwise.reloaded') === to.fullPath) throw error
+    sessionStorage.setItem('notchwise.reloaded', to.fullPath)
+    location.assign(to.fullPath)
+  })
+}
