@@ -18,7 +18,7 @@ import { answers, does, type Route } from './route'
 export const fittingRoutes: Route[] = [
   does(claimFitting, claimFittingService),
   does(giveBackFitting, giveBackFittingService),
-  does(decideFitting, decideFittingService),
+  does(decideFitting, decideFittingService, { signedBy: (body) => body.secondPersonId ?? null }),
   answers(getFittingFacts, async (deps, actor, { query }) => {
     const { facts, rental, renter } = await fittingFactsOf(deps.db, actor.shopId, {
       rentalId: query.rentalId,

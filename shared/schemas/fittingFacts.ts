@@ -142,7 +142,9 @@ export const openFittingFact = z.object({
   number: z.number().int(),
   state: z.enum(['claimed', 'prepared']),
   skiPairId: id,
+  /** Null: the renter's own. */
   bootsId: id.nullable(),
+  value: z.number(),
   by: z.string(),
   since: instant,
 })

@@ -24,8 +24,11 @@ import { staff } from '../support/people'
 import { addBindingModel, addPair } from '../support/things'
 
 let shop: TestShop
+/** An enrolled desk: PINs are asked for nowhere else. */
+let device: Awaited<ReturnType<TestShop['enrol']>>
 beforeAll(async () => {
   shop = await testShop()
+  device = await shop.enrol('counter')
 })
 
 /** A renter of 78 kg, racked boots with a sole of 305 mm, a racked pair that takes them. */
@@ -41,7 +44,7 @@ const decide = (
   body: BodyOf<typeof decideFitting>,
   who: Parameters<TestShop['as']>[0] = 'head_technician',
   pin?: string,
-) => shop.as(who).send(decideFitting, body, { pin })
+) => shop.as(who, pin ? device : undefined).send(decideFitting, body, { pin })
 const detail = async (fittingId: string) =>
   (await shop.as('technician').get<AnswerOf<typeof getFitting>>(getFitting.path.replace(':id', fittingId)))
     .body

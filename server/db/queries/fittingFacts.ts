@@ -1,6 +1,5 @@
 import { and, desc, eq, inArray } from 'drizzle-orm'
 import { alias } from 'drizzle-orm/pg-core'
-import type { EditionName } from '#shared/release/selectionTable'
 import {
   decisionKinds,
   type DecisionFact,
@@ -9,12 +8,9 @@ import {
 } from '#shared/schemas/fittingFacts'
 import type { Reader } from '../../deps'
 import { Problem } from '../../errors'
+import { shopEdition, tableApproval } from '../../services/tableEdition'
 import { fittingInputs, fittings, people, rentals, renters, shops } from '../schema/schema'
-import { tableApproved } from './tableApproved'
 import { decisionFacts, holderOf, ownBootsFact, shopBootsFact, skiPairFacts } from './fittingParts'
-
-/** A shop uses the eight columns. */
-export const shopEdition: EditionName = 'eight-column'
 
 export interface FittingParts {
   rentalId: string
@@ -60,7 +56,7 @@ export async function fittingFactsOf(db: Reader, shopId: string, parts: FittingP
     decisions: (await decisionFacts(db, { rentalId: rental.id })).filter(isFittingDecision),
     openFitting: await openFittingOf(db, rental.id),
     edition: shopEdition,
-    approved: await tableApproved(db, shopId, shopEdition),
+    approved: (await tableApproval(db, shopId)).approved,
     near: { massKg: shop.nearMassKg, heightCm: shop.nearHeightCm },
   }
   return { facts, rental, renter, shop }
@@ -124,13 +120,14 @@ export async function openFittingOf(db: Reader, rentalId: string): Promise<Fitti
     .orderBy(desc(fittings.claimedAt))
     .limit(1)
   if (!row) return null
-  const { id, number, state, skiPairId, bootsId, claimedAt } = row.fitting
+  const { id, number, state, skiPairId, bootsId, value, claimedAt } = row.fitting
   return {
     id,
     number,
     state: state === 'prepared' ? 'prepared' : 'claimed',
     skiPairId,
     bootsId,
+    value,
     by: row.by,
     since: claimedAt.toISOString(),
   }

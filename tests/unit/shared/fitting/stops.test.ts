@@ -111,6 +111,7 @@ describe('what stops a fitting', () => {
       state: 'claimed' as const,
       skiPairId: ids.pair,
       bootsId: ids.boots,
+      value: 6.5,
       by: 'Arvid Lenk',
       since: '2027-01-15T08:41:00.000Z',
     }
