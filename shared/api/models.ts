@@ -65,7 +65,7 @@ export const getBindingModel = read({
   path: '/api/binding-models/:id',
   access: 'fleet.read',
   params: z.object({ id }),
-  answer: bindingModel,
+  answer: bindingModel.extend({ pairs: z.number().int() }),
 })
 
 export const saveBindingModel = command({

@@ -1,4 +1,4 @@
-import { and, asc, desc, eq, sql } from 'drizzle-orm'
+import { and, asc, count, desc, eq, sql } from 'drizzle-orm'
 import type { BindingModel, SkiModel } from '#shared/api/models'
 import { Problem } from '../../errors'
 import type { Reader } from '../../deps'
@@ -13,21 +13,40 @@ export async function skiModelList(db: Reader, shopId: string): Promise<(SkiMode
       waistMm: skiModels.waistMm,
       offsetMm: skiModels.offsetMm,
       junior: skiModels.junior,
-      pairs: sql<number>`(select count(*)::int from ${skiPairs} where ${skiPairs.skiModelId} = ${skiModels.id})`,
+      pairs: count(skiPairs.id),
     })
     .from(skiModels)
+    .leftJoin(skiPairs, eq(skiPairs.skiModelId, skiModels.id))
     .where(eq(skiModels.shopId, shopId))
+    .groupBy(skiModels.id)
     .orderBy(asc(skiModels.name))
 }
 
-const approval = (column: 'person' | 'at') => sql<string | null>`(
-  select ${column === 'person' ? sql`${people.name}` : sql`to_json(${bindingModelApprovals.occurredAt}) #>> '{}'`}
-  from ${bindingModelApprovals} join ${people} on ${people.id} = ${bindingModelApprovals.personId}
-  where ${bindingModelApprovals.bindingModelId} = ${bindingModels.id} and ${bindingModelApprovals.contentSha256} = ${bindingModels.contentSha256}
-  order by ${bindingModelApprovals.recordedAt} desc limit 1)`
-
-const joined = (db: Reader) =>
-  db
+/** Binding models with the latest approval of each sheet as it now stands, and how many pairs carry each. */
+function joined(db: Reader, shopId: string) {
+  const carried = db
+    .select({ modelId: skiPairs.bindingModelId, pairs: count().as('pairs') })
+    .from(skiPairs)
+    .where(eq(skiPairs.shopId, shopId))
+    .groupBy(skiPairs.bindingModelId)
+    .as('carried')
+  const signed = db
+    .selectDistinctOn([bindingModelApprovals.bindingModelId, bindingModelApprovals.contentSha256], {
+      modelId: bindingModelApprovals.bindingModelId,
+      contentSha256: bindingModelApprovals.contentSha256,
+      at: bindingModelApprovals.occurredAt,
+      by: people.name,
+    })
+    .from(bindingModelApprovals)
+    .innerJoin(people, eq(people.id, bindingModelApprovals.personId))
+    .where(eq(bindingModelApprovals.shopId, shopId))
+    .orderBy(
+      bindingModelApprovals.bindingModelId,
+      bindingModelApprovals.contentSha256,
+      desc(bindingModelApprovals.recordedAt),
+    )
+    .as('signed')
+  return db
     .select({
       id: bindingModels.id,
       name: bindingModels.name,
@@ -43,29 +62,44 @@ const joined = (db: Reader) =>
       version: bindingModels.version,
       blockedReason: bindingModels.blockedReason,
       blockedAt: bindingModels.blockedAt,
-      approvedBy: approval('person'),
-      approvedAt: approval('at'),
-      pairs: sql<number>`(select count(*)::int from ${skiPairs} where ${skiPairs.bindingModelId} = ${bindingModels.id})`,
+      approvedBy: signed.by,
+      approvedAt: signed.at,
+      pairs: carried.pairs,
     })
     .from(bindingModels)
+    .leftJoin(
+      signed,
+      and(eq(signed.modelId, bindingModels.id), eq(signed.contentSha256, bindingModels.contentSha256)),
+    )
+    .leftJoin(carried, eq(carried.modelId, bindingModels.id))
+}
 
 function asModel(row: Awaited<ReturnType<typeof joined>>[number]): BindingModel & { pairs: number } {
   const { blockedAt, ...rest } = row
   return {
     ...rest,
-    approvedAt: row.approvedAt === null ? null : isoOrNull(new Date(row.approvedAt)),
+    approvedAt: isoOrNull(row.approvedAt),
     approved: row.approvedBy !== null && blockedAt === null,
+    pairs: row.pairs ?? 0,
   }
 }
 
 export async function bindingModelList(db: Reader, shopId: string) {
-  const rows = await joined(db).where(eq(bindingModels.shopId, shopId)).orderBy(asc(bindingModels.name))
+  const rows = await joined(db, shopId)
+    .where(eq(bindingModels.shopId, shopId))
+    .orderBy(asc(bindingModels.name))
   return rows.map(asModel)
 }
 
 /** A binding model with the approval of its sheet as it now stands. */
-export async function bindingModelById(db: Reader, shopId: string, id: string): Promise<BindingModel> {
-  const [row] = await joined(db).where(and(eq(bindingModels.shopId, shopId), eq(bindingModels.id, id)))
+export async function bindingModelById(
+  db: Reader,
+  shopId: string,
+  id: string,
+): Promise<BindingModel & { pairs: number }> {
+  const [row] = await joined(db, shopId).where(
+    and(eq(bindingModels.shopId, shopId), eq(bindingModels.id, id)),
+  )
   if (!row) throw new Problem('items.unknown')
   return asModel(row)
 }
@@ -76,6 +110,5 @@ export async function windowPicture(db: Reader, shopId: string, id: string) {
     .select({ picture: bindingModels.windowPicture, type: bindingModels.windowPictureType })
     .from(bindingModels)
     .where(and(eq(bindingModels.shopId, shopId), eq(bindingModels.id, id)))
-    .orderBy(desc(bindingModels.version))
   return row?.picture && row.type ? { picture: row.picture, type: row.type } : null
 }

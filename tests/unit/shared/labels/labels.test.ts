@@ -1,7 +1,14 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { checkCharacter, checksOut, labelAlphabet } from '#shared/labels/checkCharacter'
-import { labelFor, parseLabel, parseTyped, sidedCode, type LabelSide } from '#shared/labels/labels'
+import {
+  labelFor,
+  parseLabel,
+  parseTyped,
+  replacementLabel,
+  sidedCode,
+  type LabelSide,
+} from '#shared/labels/labels'
 
 const sides: (LabelSide | null)[] = [null, 'left', 'right']
 const codes = ['S', 'B'].flatMap((kind) =>
@@ -183,5 +190,26 @@ describe('a code typed by hand', () => {
       'B288R',
       'S417',
     ])
+  })
+})
+
+describe('a label that takes the place of a lost one', () => {
+  it('reads as ours, carries the code, and is no other label of this shop', () => {
+    const texts = codes.flatMap((code) =>
+      (['left', 'right'] as const).flatMap((side) =>
+        [1, 2, 9].map((before) => replacementLabel(code, side, before)!),
+      ),
+    )
+    expect(new Set([...texts, ...everyLabel]).size).toBe(texts.length + everyLabel.length)
+    expect(texts.every((text) => parseLabel(text).ok)).toBe(true)
+    expect(replacementLabel('S417', 'left', 1)?.slice(0, -1)).toBe('S100417L')
+    expect(replacementLabel('B99999', 'right', 9)?.slice(0, -1)).toBe('B999999R')
+  })
+
+  it('is not made for what has no label yet, for the tenth time, or for a code that is not ours', () => {
+    expect(replacementLabel('S417', 'left', 0)).toBeNull()
+    expect(replacementLabel('S417', 'left', 10)).toBeNull()
+    for (const code of ['S', 'X417', 'S100417'])
+      expect(() => replacementLabel(code, 'left', 1)).toThrow(RangeError)
   })
 })

@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest'
 import { answerTrack } from '#shared/calc/answers'
 import { markOf, notches, notchOfMark } from '#shared/track/marks'
 import { movesBetween, notchDistance } from '#shared/track/moves'
+import { solesByPosition } from '#shared/track/solesByPosition'
 import { targetIndicator } from '#shared/track/targetIndicator'
 import { trackModelSchema, type TrackModel } from '#shared/track/trackModel'
 import { trackModelProblems } from '#shared/track/trackModelProblems'
@@ -118,6 +119,16 @@ describe('a preset', () => {
         expect(range).toEqual({ minMm: same[0], maxMm: same.at(-1) })
         // no other preset lies in between
         expect(same.length).toBe((range?.maxMm ?? 0) - (range?.minMm ?? 0) + 1)
+      }
+    }
+  })
+
+  it('is the same where all ranges are made in one pass', () => {
+    for (const model of models) {
+      const ranges = solesByPosition(model)
+      for (const [position, range] of ranges) {
+        const [toe = 0, heel = 0] = position.split(' ').map(Number)
+        expect(range).toEqual(soleRangeAt(model, toe, heel))
       }
     }
   })
