@@ -1,4 +1,5 @@
 import type { AppPassport } from '../auth/passport'
+import { benchRoutes } from './bench'
 import { boardRoutes } from './board'
 import { formRoutes } from './forms'
 import { rentalRoutes } from './rentals'
@@ -22,6 +23,7 @@ export function routes(passport: AppPassport): Route[] {
     ...rentalRoutes,
     ...thingsRoutes,
     ...fittingRoutes,
+    ...benchRoutes,
     ...returnsRoutes,
     ...callBackRoutes,
   ]

@@ -36,6 +36,8 @@ export async function endFitting(
     state: 'void' | 'given_back'
     reason: VoidReason | 'given_back' | 'no_show'
     to?: Record<string, ItemState>
+    /** In a person's words, for an item that does not go back to the rack. */
+    why?: string
   },
 ) {
   if (fitting.state !== 'claimed' && fitting.state !== 'prepared') {
@@ -54,11 +56,12 @@ export async function endFitting(
     })
     .where(eq(fittings.id, fitting.id))
   for (const item of items) {
+    const to = end.to?.[item.id] ?? 'racked'
     await changeState(context, item, {
       from: item.state,
-      to: end.to?.[item.id] ?? 'racked',
+      to,
       siteId: item.siteId,
-      reason: end.reason,
+      reason: to === 'racked' ? end.reason : (end.why ?? end.reason),
       subjectId: fitting.id,
     })
   }

@@ -1,5 +1,8 @@
 import { z } from 'zod'
 
+/** Rows that a rule moved: type, age, request, decision. Negative is up, to a lower value. */
+export const rowStep = z.object({ rule: z.string(), rows: z.number().int() })
+
 /** What the selection table gave, without the body values it was read with. */
 export const releaseOutcome = z.object({
   row: z.string(),
@@ -7,11 +10,10 @@ export const releaseOutcome = z.object({
   sideways: z.boolean(),
   twistNm: z.number(),
   forwardLeanNm: z.number(),
-  /** Rows moved, by rule: type, age, request, decision. Negative is up, to a lower value. */
-  rowSteps: z.array(z.object({ rule: z.string(), rows: z.number().int() })),
+  rowSteps: z.array(rowStep),
 })
 export type ReleaseOutcome = z.infer<typeof releaseOutcome>
-export type RowStep = ReleaseOutcome['rowSteps'][number]
+export type RowStep = z.infer<typeof rowStep>
 
 /** Target indicator of each unit of each ski: value plus the unit's correction, rounded down to the scale's step. */
 const unitTargets = z.object({ toe: z.number(), heel: z.number() })

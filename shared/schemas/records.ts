@@ -17,3 +17,7 @@ export const partReading = z.strictObject({
   function: z.literal(true),
 })
 export type PartReading = z.infer<typeof partReading>
+
+/** What a technician sees, before it is judged: forward pressure may stand outside its window. */
+export const seenReading = partReading.extend({ forwardPressure: z.boolean() })
+export type SeenReading = z.infer<typeof seenReading>
