@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { boardCatchUp, boardSnapshot } from '#shared/schemas/board'
+import { id } from '#shared/schemas/common'
 import { read } from './define'
 
 /** The whole board. */
@@ -11,4 +12,11 @@ export const getBoardSince = read({
   access: 'board.read',
   params: z.object({ seq: z.coerce.number().int().min(0) }),
   answer: boardCatchUp,
+})
+
+/** First name and initial of everybody on the board: read by staff screens on their own, never in an event. */
+export const getBoardNames = read({
+  path: '/api/board/names',
+  access: 'renters.read',
+  answer: z.object({ names: z.array(z.object({ rentalId: id, name: z.string() })) }),
 })

@@ -1,6 +1,15 @@
 import { and, eq, inArray, isNull, notInArray, sql } from 'drizzle-orm'
 import type { BoardEvent, BoardFitting, BoardItem, BoardRental, BoardSnapshot } from '#shared/schemas/board'
-import { boots, callBacks, fittings, rentalItems, rentals, shopSequences, skiPairs } from '../schema/schema'
+import {
+  boots,
+  callBacks,
+  fittings,
+  rentalItems,
+  rentals,
+  renters,
+  shopSequences,
+  skiPairs,
+} from '../schema/schema'
 import type { Reader } from '../../deps'
 
 const iso = (date: Date) => date.toISOString()
@@ -162,4 +171,16 @@ export async function boardSnapshot(
     }),
     { isolationLevel: 'repeatable read', accessMode: 'read only' },
   )
+}
+
+/** First name and initial of everybody whose rental is on the board. */
+export async function boardNames(db: Reader, shopId: string): Promise<{ rentalId: string; name: string }[]> {
+  return db
+    .select({
+      rentalId: rentals.id,
+      name: sql<string>`trim(${renters.firstName} || ' ' || coalesce(nullif(left(${renters.lastName}, 1), '') || '.', ''))`,
+    })
+    .from(rentals)
+    .innerJoin(renters, eq(renters.id, rentals.renterId))
+    .where(and(eq(rentals.shopId, shopId), inArray(rentals.state, ['waiting', 'open', 'out'])))
 }
