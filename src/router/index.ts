@@ -3,6 +3,7 @@ import { installGuards } from './guards'
 import './meta'
 import { basicRoutes, designRoutes } from './routes/basic'
 import { benchRoutes } from './routes/bench'
+import { boardRoutes } from './routes/board'
 import { counterRoutes } from './routes/counter'
 import { fleetRoutes } from './routes/fleet'
 import { officeRoutes } from './routes/office'
@@ -17,6 +18,7 @@ export const router: Router = createRouter({
     ...counterRoutes,
     ...benchRoutes,
     ...returnsRoutes,
+    ...boardRoutes,
     ...fleetRoutes,
     ...officeRoutes,
     ...designRoutes,
