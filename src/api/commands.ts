@@ -55,12 +55,16 @@ export function noteServerTime(serverTime: Date, now: Date) {
   clockOffsetMs = serverTime.getTime() - now.getTime()
 }
 
+/** What of a command is needed to send it. The renter's phone gives its names only and leaves the schemas out. */
+type Sendable<Body, Ids> = Pick<Command<string, Body, Ids>, 'kind' | 'path'> &
+  Partial<Pick<Command<string, Body, Ids>, 'body' | 'ids'>>
+
 /**
  * Sends a command and answers what it made. Refusals are thrown as `ApiProblem`; when the server cannot be reached
  * after a few tries, `NotSent` is thrown and its `again` sends the very same command.
  */
 export function sendCommand<Body, Ids>(
-  command: Command<string, Body, Ids>,
+  command: Sendable<Body, Ids>,
   body: NoInfer<Body>,
   { pin, link }: { pin?: string; link?: string } = {},
 ): Promise<CommandAnswer<Ids>> {
