@@ -28,7 +28,17 @@ const child = spawn(process.execPath, ['--import', 'tsx', file, ...args], {
   stdio: ['inherit', 'inherit', 'inherit', 'ipc'],
 })
 for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, () => child.kill(signal))
+endWithNpm()
 child.on('exit', (code, signal) => process.exit(signal ? 1 : code))
+
+/** Where npm began this and is killed with -9, it tells nobody: its death is seen by the change of parent. */
+function endWithNpm() {
+  if (!process.env.npm_lifecycle_event) return
+  const npm = process.ppid
+  setInterval(() => {
+    if (process.ppid !== npm) child.kill('SIGTERM')
+  }, 1000).unref()
+}
 
 /** npm notes what it installed; every package of the lock file that belongs on this machine must be in that note. */
 function packagesAreThere() {
