@@ -44,6 +44,7 @@ export async function startSession(
       req.session.save((e: unknown) => (e ? failed(e as Error) : done()))
     })
   })
+  writeNoMore(req)
   deps.dropSockets({ sessionId: before })
   if (req.session.deviceId) {
     await keepOneSessionAt(deps, req.session.deviceId)
@@ -58,6 +59,17 @@ export async function startSession(
     throw new Problem('session.wrong_credentials')
   }
   return actor
+}
+
+/**
+ * At the end of a request express-session writes a new session once more; one that was ended meanwhile (by who went
+ * on in the same moment, or by a manager) would stand again.
+ */
+function writeNoMore({ session }: Request) {
+  session.save = (done) => {
+    done?.(undefined)
+    return session
+  }
 }
 
 /** Ends this request's session, in the store too. */
