@@ -1,6 +1,7 @@
 import { useI18n } from 'vue-i18n'
 import { ApiProblem } from '../../../api/http'
 import { NotSent } from '../../../api/commands'
+import type { ProblemParams } from '#shared/errors'
 
 /** What happened, and what is safe and to be done next. */
 export interface ProblemText {
@@ -18,20 +19,18 @@ export function useProblemText(): (error: unknown) => ProblemText {
   const codeOf = (error: unknown) =>
     error instanceof ApiProblem ? error.code : error instanceof NotSent ? 'network.not_sent' : 'server.fault'
 
-  function paramsOf(error: unknown): Record<string, string | number> {
-    if (!(error instanceof ApiProblem)) return {}
-    const list = new Intl.ListFormat(locale.value, { type: 'conjunction' })
-    return Object.fromEntries(
-      Object.entries(error.params).map(([name, value]) => [
-        name,
-        Array.isArray(value)
-          ? list.format(value.map(String))
-          : typeof value === 'number'
-            ? value
-            : String(value ?? '–'),
-      ]),
-    )
+  /** States travel as their codes and lists as arrays; both are put into words. */
+  function wordsOf(name: string, value: ProblemParams[string]): string | number {
+    if (Array.isArray(value)) return new Intl.ListFormat(locale.value).format(value.map(String))
+    if (typeof value === 'number') return value
+    const state = `staff.states.${value}`
+    return name === 'state' && te(state) ? t(state) : String(value ?? '–')
   }
+
+  const paramsOf = (error: unknown) =>
+    error instanceof ApiProblem
+      ? Object.fromEntries(Object.entries(error.params).map(([name, value]) => [name, wordsOf(name, value)]))
+      : {}
 
   return (error) => {
     const code = codeOf(error)
