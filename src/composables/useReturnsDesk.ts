@@ -83,6 +83,7 @@ export function useReturnsDesk() {
     const { code, side } = parsed
     if (side) return inTurn(() => record({ text: parsed.text, code, side }))
     asked.value = { text: parsed.text, code }
+    mixed.value = null
     return { tone: 'already', message: t('returns.which.title', { code }) }
   }
 
