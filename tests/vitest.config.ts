@@ -8,7 +8,6 @@ const root = fileURLToPath(new URL('..', import.meta.url))
 const onDatabase = {
   globalSetup: ['tests/support/globalDatabase.ts'],
   env: { NODE_ENV: 'test' },
-  maxWorkers: 2,
   testTimeout: 30_000,
   hookTimeout: 60_000,
 }
@@ -17,6 +16,7 @@ export default defineConfig({
   root,
   plugins: [vue()],
   test: {
+    maxWorkers: 2,
     projects: [
       {
         extends: true,
@@ -35,7 +35,8 @@ export default defineConfig({
         test: {
           name: 'faults',
           include: ['tests/faults/**/*.test.ts'],
-          fileParallelism: false,
+          maxWorkers: 1,
+          sequence: { groupOrder: 1 },
           testTimeout: 60_000,
           hookTimeout: 120_000,
         },
