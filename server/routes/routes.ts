@@ -16,7 +16,7 @@ import { doorRoutes, sessionRoutes } from './session'
 export function routes(passport: AppPassport): Route[] {
   const described = [
     ...sessionRoutes(passport),
-    ...doorRoutes,
+    ...doorRoutes(),
     ...officeRoutes,
     ...boardRoutes,
     ...formRoutes,

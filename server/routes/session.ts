@@ -95,7 +95,7 @@ export function sessionRoutes(passport: AppPassport): Route[] {
 }
 
 /** What a browser may ask before anybody is signed in: the station it is, the demo's sign-ins, the first start. */
-export const doorRoutes: Route[] = [
+export const doorRoutes = (): Route[] => [
   {
     method: 'get',
     path: '/api/station',

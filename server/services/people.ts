@@ -19,6 +19,7 @@ import type { PersonActor } from './actor'
 import type { Service } from './commands'
 import { changedFields, noteOfficeChange } from './office'
 import { endSessions } from './sessions'
+import { lockShop } from './shops'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
@@ -131,18 +132,19 @@ export async function setPassword(
 const isMember = (shopId: string, personId: string) =>
   and(eq(memberships.shopId, shopId), eq(memberships.personId, personId))
 
+/** Who is changed; changes of people come one by one, so that two managers who end each other leave one. */
 async function lockedMember(tx: Tx, shopId: string, personId: string) {
+  await lockShop(tx, shopId)
   const [found] = await tx
     .select({ person: people, member: memberships })
     .from(memberships)
     .innerJoin(people, eq(people.id, memberships.personId))
     .where(isMember(shopId, personId))
-    .for('update')
   if (!found) throw new Problem('people.unknown')
   return found
 }
 
-/** Somebody else must be left who can manage the shop; two managers who end each other at once come one by one. */
+/** Somebody else must be left who can sign in and manage the shop. */
 async function requireOtherManager(tx: Tx, shopId: string, personId: string) {
   const managers = await tx
     .select({ id: people.id })
@@ -157,8 +159,6 @@ async function requireOtherManager(tx: Tx, shopId: string, personId: string) {
         ne(people.passwordHash, ''),
       ),
     )
-    .orderBy(asc(memberships.personId))
-    .for('update')
   if (!managers.some(({ id }) => id !== personId)) throw new Problem('people.last_manager')
 }
 

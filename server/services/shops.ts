@@ -3,7 +3,7 @@ import type { AnswerOf, BodyOf, IdsOf } from '#shared/api/define'
 import type { changeShop, createSite, getShop, renameSite, ShopSettings } from '#shared/api/shop'
 import { dayInZone } from '#shared/dates/days'
 import { shops, sites } from '../db/schema/schema'
-import type { Reader } from '../deps'
+import type { Reader, Tx } from '../deps'
 import { isDuplicate, Problem } from '../errors'
 import type { PersonActor } from './actor'
 import type { Service } from './commands'
@@ -14,6 +14,16 @@ type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 /** The shop's settings. */
 export async function shopById(db: Reader, shopId: string) {
   const [shop] = await db.select().from(shops).where(eq(shops.id, shopId))
+  if (!shop) throw new Problem('session.shop')
+  return shop
+}
+
+/**
+ * The shop's settings, and its office work one at a time from here to the end of the transaction. Rows that refer to
+ * the shop are added meanwhile: a lock that those would wait for is one that two commands can wait for in a circle.
+ */
+export async function lockShop(tx: Tx, shopId: string) {
+  const [shop] = await tx.select().from(shops).where(eq(shops.id, shopId)).for('no key update')
   if (!shop) throw new Problem('session.shop')
   return shop
 }
@@ -34,8 +44,7 @@ export async function shopForOffice(db: Reader, shopId: string): Promise<AnswerO
 
 export const changeShopService: Does<typeof changeShop> = async (context, body) => {
   const { tx, actor } = context
-  const [shop] = await tx.select().from(shops).where(eq(shops.id, actor.shopId)).for('update')
-  if (!shop) throw new Problem('session.shop')
+  const shop = await lockShop(tx, actor.shopId)
   await tx.update(shops).set(body).where(eq(shops.id, actor.shopId))
   await noteOfficeChange(context, 'shop.change', actor.shopId, changedFields(settingsOf(shop), body))
   return { shopId: actor.shopId }

@@ -17,6 +17,7 @@ import type { PersonActor } from './actor'
 import type { Service } from './commands'
 import { productText } from './defaultTexts'
 import { noteOfficeChange } from './office'
+import { lockShop } from './shops'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
@@ -64,6 +65,7 @@ export const writeTextService: Does<typeof writeText> = async (context, body) =>
 /** Signs the wording that was read: refused when another stands there meanwhile. */
 export const reviewTextService: Does<typeof reviewText> = async (context, { kind, locale, sha256 }) => {
   const { tx, actor, occurredAt } = context
+  await lockShop(tx, actor.shopId)
   const { current, waiting } = await versionsOf(tx, actor.shopId, kind, locale)
   const read = waiting ?? current
   if (read.sha256 !== sha256) throw new Problem('texts.changed')
@@ -120,7 +122,7 @@ async function addVersion(
   shopId: string,
   { kind, locale, body }: { kind: TextKind; locale: TextLocale; body: string },
 ): Promise<string> {
-  await tx.select({ id: shops.id }).from(shops).where(eq(shops.id, shopId)).for('update')
+  await lockShop(tx, shopId)
   const [last] = await tx
     .select({ version: max(shopTexts.version) })
     .from(shopTexts)
