@@ -1,4 +1,5 @@
 import type { Height, Mass } from '#shared/units/bodySchemas'
+import { wholeHeight, wholeMass } from '#shared/units/wholeUnits'
 import { selectionRows, type Band } from './selectionTable'
 
 /** Where a body value stands in the table: row index from 0 (A), or null when it is below the table. */
@@ -19,17 +20,6 @@ const massKgBands = selectionRows.map((row) => row.massKg)
 const massLbBands = selectionRows.map((row) => row.massLb)
 const heightCmBands = selectionRows.map((row) => row.heightCm)
 const heightInBands = selectionRows.map((row) => row.heightIn)
-
-/** Pounds are cut down before they are added to the stone: 13.999… stays 13. */
-export function wholeMass(mass: Mass): { unit: 'kg' | 'lb'; whole: number } {
-  if (mass.unit === 'st-lb') return { unit: 'lb', whole: 14 * mass.stone + Math.floor(mass.pounds) }
-  return { unit: mass.unit, whole: Math.floor(mass.value) }
-}
-
-export function wholeHeight(height: Height): { unit: 'cm' | 'in'; whole: number } {
-  if (height.unit === 'ft-in') return { unit: 'in', whole: 12 * height.feet + Math.floor(height.inches) }
-  return { unit: 'cm', whole: Math.floor(height.value) }
-}
 
 /** Row of a mass, in the unit given. Below the table (under 10 kg, 22 lb): index null. */
 export function massBand(mass: Mass): BandHit<'kg' | 'lb'> {

@@ -1,28 +1,29 @@
 import { addDays, ageOn, type Day } from '#shared/dates/days'
 import { agesForRental } from '#shared/release/agesForRental'
-import { wholeMass } from '#shared/release/bands'
 import { inputLimits, lightSkier, type SkierType } from '#shared/release/rules'
 import type { Born, Contact, Period, RenterForm } from '#shared/schemas/renters'
 import type { Mass } from '#shared/units/bodySchemas'
+import { wholeMass } from '#shared/units/wholeUnits'
 
+/** The fields of a form in the order in which they are asked for. */
 export const formFields = [
   'firstName',
   'lastName',
-  'email',
-  'phone',
   'birthDate',
   'age',
   'guardianName',
   'guardianRelation',
   'guardianPhone',
+  'phone',
+  'email',
   'mass',
   'height',
   'skierType',
   'ownBoots',
   'shoe',
+  'wishes',
   'startsOn',
   'endsOn',
-  'wishes',
 ] as const
 export type FormField = (typeof formFields)[number]
 

@@ -79,8 +79,8 @@ describe('a draft that lacks something', () => {
     expect(slips(emptyDraft)).toEqual([
       'firstName:empty',
       'lastName:empty',
-      'phone:nobody_reachable',
       'birthDate:empty',
+      'phone:nobody_reachable',
       'mass:empty',
       'height:empty',
       'skierType:empty',
