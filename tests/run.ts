@@ -1,9 +1,10 @@
 import { spawn } from 'node:child_process'
 import fs from 'node:fs'
 import path from 'node:path'
+import { fileURLToPath } from 'node:url'
 import { aptInstall, findPrograms, installPrograms, isRoot } from '../server/postgres/programs'
 
-const root = path.resolve(new URL('..', import.meta.url).pathname)
+const root = fileURLToPath(new URL('..', import.meta.url))
 const reports = path.join(root, '.cache/reports')
 const bin = (name: string) => path.join(root, 'node_modules/.bin', name)
 
@@ -17,9 +18,10 @@ interface Suite {
   run: () => Promise<Count>
 }
 
-const vitestProjects = ['unit', 'client', 'reference', 'api', 'sockets']
+const vitestProjects = ['unit', 'client', 'reference', 'api', 'sockets', 'faults']
 const suites: Suite[] = [
   { name: 'lint', run: () => check('npm', ['run', '--silent', 'lint']) },
+  { name: 'format', run: () => check(bin('prettier'), ['--check', '--log-level', 'warn', '.']) },
   { name: 'typecheck', run: () => check(bin('vue-tsc'), ['--build']) },
   ...vitestProjects.map((name) => ({ name, run: () => vitest(name) })),
   { name: 'e2e', run: playwright },
@@ -27,7 +29,8 @@ const suites: Suite[] = [
 
 /** Everything that the tests need on this machine; installed as root, otherwise said in words. */
 function prepare(wanted: string[]) {
-  if (!findPrograms()) installPrograms(console.log)
+  const needsPostgres = ['api', 'sockets', 'faults', 'e2e'].some((name) => wanted.includes(name))
+  if (needsPostgres && !findPrograms()) installPrograms(console.log)
   if (!wanted.includes('e2e') || fs.existsSync('/usr/bin/chromium')) return
   if (!isRoot) throw new Error('The browser tests need Chromium. As root, type: apt-get install -y chromium')
   console.log('Installing Chromium (once) ...')
@@ -44,7 +47,7 @@ async function vitest(project: string): Promise<Count> {
   const report = path.join(reports, `${project}.json`)
   fs.rmSync(report, { force: true })
   await runToEnd(bin('vitest'), [
-    ...['run', '--config', 'tests/vitest.config.ts', '--project', project, '--passWithNoTests'],
+    ...['run', '--config', 'tests/vitest.config.ts', '--project', project],
     ...['--reporter', 'default', '--reporter', 'json', '--outputFile.json', report],
   ])
   if (!fs.existsSync(report)) return { passed: 0, failed: 1 }

@@ -14,8 +14,12 @@ if (!((major === 20 && minor >= 19) || (major === 22 && minor >= 12) || major > 
 }
 
 if (!packagesAreThere()) {
-  console.log('Installing packages (once) ...')
-  const npm = spawnSync('npm', ['ci', '--no-progress', '--loglevel=error'], { cwd: root, stdio: 'inherit' })
+  // On standard error: what a command answers on standard output may be read by a program.
+  console.error('Installing packages (once) ...')
+  const npm = spawnSync('npm', ['ci', '--no-progress', '--loglevel=error'], {
+    cwd: root,
+    stdio: ['ignore', process.stderr, process.stderr],
+  })
   if (npm.status !== 0) {
     console.error('The packages could not be installed; npm says why above. Type npm ci to see it again.')
     process.exit(1)
