@@ -14,7 +14,6 @@ import {
 } from '#shared/api/rentals'
 import { rentalById } from '../db/queries/rental'
 import { rentalList } from '../db/queries/rentals'
-import { sentencesReviewed } from '../services/forms'
 import { readOwnBootsService, secondLookService } from '../services/ownBoots'
 import {
   cancelRentalService,
@@ -22,6 +21,7 @@ import {
   createRentalService,
   takeRentalService,
 } from '../services/rentals'
+import { sentencesReviewed } from '../services/texts'
 import { changeContactService, changeInputsService, requestRowService } from '../services/renters'
 import { shopById, shopDay } from '../services/shops'
 import { answers, does, type Route } from './route'

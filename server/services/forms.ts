@@ -16,14 +16,15 @@ import { addDays } from '#shared/dates/days'
 import type { RentalState } from '#shared/lifecycle/fittingStates'
 import type { RenterForm } from '#shared/schemas/renters'
 import { tokenHash } from '../auth/tokens'
-import { doorLinks, formLinks, rentals, renters, shops, shopTexts, sites } from '../db/schema/schema'
-import type { Deps, Reader } from '../deps'
+import { doorLinks, formLinks, rentals, renters, shops, sites } from '../db/schema/schema'
+import type { Deps } from '../deps'
 import { Problem } from '../errors'
 import type { LinkActor, PersonActor } from './actor'
 import type { CommandContext, Service } from './commands'
 import { addRental, requireSite, usableForm } from './rentals'
 import { addInputs, carriedRequest, contactColumns, lockRental, replaceInputs } from './renters'
 import { shopById, shopDay } from './shops'
+import { sentencesReviewed } from './texts'
 
 /** A link lives until the shop's day after tomorrow begins, or the day after the rental ends. */
 const linkLivesDays = 1
@@ -117,15 +118,6 @@ export async function beginForm(deps: Deps, { door, token }: z.infer<typeof begi
       expiresAt: endOfDayAfter(now, found.zone, linkLivesDays),
     })
     .onConflictDoNothing({ target: formLinks.tokenSha256 })
-}
-
-/** Whether a person of the shop signed the sentences about skiing. */
-export async function sentencesReviewed(db: Reader, shopId: string): Promise<boolean> {
-  const reviewed = await db.$count(
-    shopTexts,
-    and(eq(shopTexts.shopId, shopId), eq(shopTexts.kind, 'skier_types'), isNotNull(shopTexts.reviewedAt)),
-  )
-  return reviewed > 0
 }
 
 /** The renter's own form: their draft, or what became of it. */

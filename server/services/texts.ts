@@ -41,6 +41,12 @@ export async function currentText(
   return (await versionsOf(db, shopId, kind, locale)).current
 }
 
+/** Whether the skier-type sentences, as the program shows them, are signed in every language. */
+export async function sentencesReviewed(db: Reader, shopId: string): Promise<boolean> {
+  const texts = await Promise.all(textLocales.map((locale) => currentText(db, shopId, 'skier_types', locale)))
+  return texts.every(({ reviewed }) => reviewed !== null)
+}
+
 /** Refuses what nobody of a real shop signed; the demo shop shows it with its mark. */
 export async function requireUsable(db: Reader, shopId: string, text: ShopText): Promise<void> {
   if (text.reviewed) return

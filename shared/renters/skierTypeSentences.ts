@@ -1,23 +1,23 @@
 import type { SkierType } from '#shared/release/rules'
 
 /**
- * The product's own sentences by which a renter says how they ski, in the order of release. The type behind a
- * sentence is never asked for. German is a translation; a shop's manager signs both before a real renter reads them.
+ * The product's own sentences by which a renter says how they ski, in the order of release; the type behind a
+ * sentence is never asked for. The renter's form shows these very words (a test holds its texts to them), and a
+ * shop's manager signs each language before a real renter reads it.
  */
 export const skierTypeSentences: Readonly<Record<'en' | 'de', Readonly<Record<SkierType, string>>>> = {
   en: {
-    'I-': 'I am learning, or I want my bindings to open as easily as they can.',
-    I: 'I ski slowly and carefully on easy slopes, and I like bindings that open easily.',
-    II: 'I ski at a medium speed on most slopes, neither slowly nor hard.',
-    III: 'I ski fast or hard, on steep slopes too, and I accept that my bindings hold longer.',
-    'III+': 'I ski harder than most fast skiers, and I accept that my bindings hold longest.',
+    'I-': 'Very carefully: it may rather open once too often',
+    I: 'Slowly and with care, on easy slopes',
+    II: 'At a medium pace, on most kinds of slope',
+    III: 'Fast and with force, steep slopes too',
+    'III+': 'Very fast, and it should hold longer than is usual',
   },
   de: {
-    'I-': 'Ich lerne noch, oder meine Bindung soll so leicht öffnen, wie sie kann.',
-    I: 'Ich fahre langsam und vorsichtig auf leichten Pisten und mag es, wenn die Bindung leicht öffnet.',
-    II: 'Ich fahre mit mittlerem Tempo auf den meisten Pisten, weder langsam noch hart.',
-    III: 'Ich fahre schnell oder hart, auch auf steilen Pisten, und nehme hin, dass die Bindung länger hält.',
-    'III+':
-      'Ich fahre härter als die meisten schnellen Fahrer und nehme hin, dass die Bindung am längsten hält.',
+    'I-': 'Sehr vorsichtig: Sie darf lieber einmal zu oft aufgehen',
+    I: 'Langsam und bedacht, auf leichten Pisten',
+    II: 'In mittlerem Tempo, auf den meisten Pisten',
+    III: 'Schnell und mit Kraft, auch im Steilen',
+    'III+': 'Sehr schnell, und sie soll länger halten als üblich',
   },
 }

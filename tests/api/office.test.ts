@@ -133,7 +133,7 @@ describe('texts', () => {
   test('the sentences about skiing are signed as they stand in the program', async () => {
     const fresh = await shop.another()
     const { current } = await text(fresh, 'skier_types', 'de')
-    expect(current.body).toContain('Ich lerne noch')
+    expect(current.body).toContain('Langsam und bedacht')
     const { kind, locale, sha256 } = current
     await fresh.as('manager').send(reviewText, { kind, locale, sha256 })
     await fresh.as('manager').send(reviewText, { kind, locale, sha256 })
