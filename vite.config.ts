@@ -3,7 +3,8 @@ import vue from '@vitejs/plugin-vue'
 import VueI18n from '@intlify/unplugin-vue-i18n/vite'
 import { defineConfig } from 'vite'
 
-const server = `http://127.0.0.1:${process.env.PORT ?? 4310}`
+// The host stays the browser's: the server compares it with the page's origin.
+const server = { target: `http://127.0.0.1:${process.env.PORT ?? 4310}`, changeOrigin: false }
 
 export default defineConfig({
   plugins: [
@@ -12,6 +13,8 @@ export default defineConfig({
     VueI18n({
       include: [fileURLToPath(new URL('./src/i18n/locales/**', import.meta.url))],
       runtimeOnly: true,
+      dropMessageCompiler: true,
+      fullInstall: false,
     }),
   ],
   build: {
@@ -21,6 +24,6 @@ export default defineConfig({
   },
   server: {
     port: 4320,
-    proxy: { '/api': server, '/socket.io': { target: server, ws: true } },
+    proxy: { '/api': server, '/socket.io': { ...server, ws: true } },
   },
 })

@@ -1,4 +1,5 @@
 import { spawn } from 'node:child_process'
+import { once } from 'node:events'
 import path from 'node:path'
 import { root } from './clientBuild'
 
@@ -12,6 +13,8 @@ const programs = [
 ]
 const children = programs.map((args) => spawn(process.execPath, args, { cwd: root, stdio: 'inherit' }))
 const endAll = () => children.forEach((child) => child.kill('SIGTERM'))
-for (const child of children) child.once('exit', endAll)
+const ends = children.map((child) => once(child, 'exit').then(endAll))
 for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) process.on(signal, endAll)
 process.on('disconnect', endAll)
+await Promise.all(ends)
+process.exit()
