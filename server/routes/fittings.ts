@@ -35,7 +35,7 @@ export const fittingRoutes: Route[] = [
     }
   }),
   answers(suggestPairs, (deps, actor, { query }) => suggestPairsFor(deps, actor.shopId, query)),
-  answers(bootsFor, (deps, actor, { query }) => bootsForRental(deps, actor.shopId, query.rentalId)),
+  answers(bootsFor, (deps, actor, { query }) => bootsForRental(deps, actor.shopId, query)),
   answers(getFitting, (deps, actor, { params }) => fittingDetail(deps.db, actor.shopId, params.id)),
   answers(getFittingWhy, (deps, actor, { params }) => fittingWhy(deps.db, actor.shopId, params.id)),
 ]

@@ -108,10 +108,12 @@ function byNearest(a: SuggestedPair, b: SuggestedPair): number {
 export async function bootsForRental(
   deps: Deps,
   shopId: string,
-  rentalId: string,
+  { rentalId, mondo: askedMondo }: { rentalId: string; mondo?: number },
 ): Promise<AnswerOf<typeof bootsFor>> {
   const { rental } = await fittingFactsOf(deps.db, shopId, { rentalId, skiPairId: null, boots: null })
-  const adviceMondo = adviseMondo(rental.shoe)
+  const adviceMondo = askedMondo ?? adviseMondo(rental.shoe)
+  // Without a size every pair in the shop would be on the list.
+  if (adviceMondo === null) return { adviceMondo, boots: [], total: 0 }
   const names = await siteNames(deps.db, shopId)
   const rows = await deps.db
     .select()
@@ -125,11 +127,10 @@ export async function bootsForRental(
       const site = names.get(siteId) ?? ''
       return { id, code, model, siteId, rackPlace, soleLengthMm, soleType, mondo, site, sameSite }
     })
-    .filter(({ mondo }) => adviceMondo === null || Math.abs(mondo - adviceMondo) <= 10)
+    .filter(({ mondo }) => Math.abs(mondo - adviceMondo) <= 10)
     .sort(
       (a, b) =>
-        first(a.sameSite, b.sameSite) ||
-        Math.abs(a.mondo - (adviceMondo ?? a.mondo)) - Math.abs(b.mondo - (adviceMondo ?? b.mondo)),
+        first(a.sameSite, b.sameSite) || Math.abs(a.mondo - adviceMondo) - Math.abs(b.mondo - adviceMondo),
     )
   return { adviceMondo, boots: near.slice(0, atMost), total: near.length }
 }

@@ -123,9 +123,13 @@ export const suggestPairs = read({
 export const bootsFor = read({
   path: '/api/boots-for',
   access: 'fittings.claim',
-  query: z.object({ rentalId: id }),
+  query: z.object({
+    rentalId: id,
+    /** A size to look for instead of the form's: mondopoint times ten, 265 is 26.5. */
+    mondo: z.coerce.number().int().min(130).max(360).optional(),
+  }),
   answer: z.object({
-    /** Mondopoint times ten by shoe size or foot length; null when neither is known. */
+    /** Mondopoint times ten: the size asked for, or by shoe size or foot length; null when none is known. */
     adviceMondo: z.number().int().nullable(),
     boots: z.array(
       shopBootsFact.omit({ kind: true, state: true }).extend({ site: z.string(), sameSite: z.boolean() }),

@@ -32,8 +32,8 @@ export function fetchPairSuggestions(rentalId: string, bootsId: string | null): 
   return request('GET', '/api/fittings/suggest', { query: { rentalId, bootsId } })
 }
 
-export function fetchBootSuggestions(rentalId: string): Promise<BootSuggestions> {
-  return request('GET', '/api/boots-for', { query: { rentalId } })
+export function fetchBootSuggestions(rentalId: string, mondo?: number): Promise<BootSuggestions> {
+  return request('GET', '/api/boots-for', { query: { rentalId, mondo } })
 }
 
 export function fetchLabel(label: string): Promise<FoundLabel> {

@@ -93,8 +93,9 @@ export function useFittingDesk(rentalId: Ref<string>) {
     if (asked === chosen.boots) pairs.value = answer
   }
 
-  async function loadBoots() {
-    bootList.value = await fetchBootSuggestions(rentalId.value).catch(() => null)
+  /** Free boots near the size by the form, or near the one given: mondopoint times ten. */
+  async function loadBoots(mondo?: number) {
+    bootList.value = await fetchBootSuggestions(rentalId.value, mondo).catch(() => null)
   }
 
   async function chooseBoots(boots: ChosenBoots) {
@@ -206,6 +207,7 @@ export function useFittingDesk(rentalId: Ref<string>) {
     loadPairs,
     chooseBoots,
     choosePair,
+    loadBoots,
     mixedWith,
     takeItem,
     sendToBench,

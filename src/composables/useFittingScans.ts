@@ -51,7 +51,6 @@ export function useFittingScans(desk: FittingDesk) {
     const found = instead.value
     instead.value = null
     if (!found) return
-    desk.seen.clear()
     await desk.takeItem(found)
   }
 

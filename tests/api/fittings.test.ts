@@ -574,14 +574,22 @@ describe('what the counter is shown before it takes anything', () => {
     expect(body.pairs.map(({ notches }) => notches)).toEqual([2, 18, null, 2])
   })
 
-  it('lists free boots by the renter’s size, and finds nothing of another shop', async () => {
+  it('lists free boots near a size, and finds nothing of another shop', async () => {
     const here = await shop.another()
     const rental = await here.rental()
-    const made = await here.rackedBoots()
-    const { body } = await here
-      .as('counter')
-      .get<{ boots: { code: string }[] }>('/api/boots-for', { rentalId: rental.id })
-    expect(body.boots.map(({ code }) => code)).toEqual([made.code])
+    const made = await here.rackedBoots({ mondo: 265 })
+    await here.rackedBoots({ mondo: 290 })
+    const codes = async (query: Record<string, string | number>) => {
+      const answer = await here.as('counter').get<{ boots: { code: string }[] }>('/api/boots-for', query)
+      return answer.body.boots.map(({ code }) => code)
+    }
+    expect(await codes({ rentalId: rental.id, mondo: 270 })).toEqual([made.code])
+    expect(await codes({ rentalId: rental.id })).toEqual([])
+    // EU 42 is 26.5 (unit test of the advice)
+    await here.db.execute(
+      sql`update rentals set shoe = '{"size": "42", "system": "eu"}' where id = ${rental.id}`,
+    )
+    expect(await codes({ rentalId: rental.id })).toEqual([made.code])
     expect((await shop.as('counter').get('/api/boots-for', { rentalId: rental.id })).status).toBe(404)
     expect((await shop.as('counter').get('/api/fittings/facts', { rentalId: rental.id })).status).toBe(404)
   })
