@@ -1,4 +1,3 @@
-import { createPinia } from 'pinia'
 import { createApp } from 'vue'
 import './assets/fonts.css'
 import './assets/tokens.css'
@@ -6,9 +5,10 @@ import './assets/base.css'
 import './assets/print.css'
 import App from './App.vue'
 import { i18n } from './i18n/i18n'
-import { router } from './router'
+import { createAppRouter } from './router'
 
 document.documentElement.lang = i18n.global.locale.value
 
-// Nothing of the component library here: the renter's phone loads this file.
-createApp(App).use(createPinia()).use(i18n).use(router).mount('#app')
+// Nothing of the component library and no store here: the renter's phone loads this file.
+const app = createApp(App)
+app.use(i18n).use(createAppRouter(app)).mount('#app')

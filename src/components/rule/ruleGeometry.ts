@@ -33,7 +33,7 @@ const sizes = {
     cut: 22,
     middle: 62,
     end: 15,
-    tip: 40,
+    tip: 54,
     pin: { width: 17, height: 26 },
   },
   small: {

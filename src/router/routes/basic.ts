@@ -5,7 +5,7 @@ import { homesOf } from '../home'
 const Nothing = { render: () => null }
 
 /** Pages of no station: the start, which leads on, and those for what cannot be shown. */
-export function basicRoutes(router: () => Router): RouteRecordRaw[] {
+export function basicRoutes(router: Router): RouteRecordRaw[] {
   return [
     {
       path: '/',
@@ -13,7 +13,7 @@ export function basicRoutes(router: () => Router): RouteRecordRaw[] {
       component: Nothing,
       beforeEnter: () => {
         const { session } = useSessionStore()
-        const name = session && homesOf(session).find((each) => router().hasRoute(each))
+        const name = session && homesOf(session).find((each) => router.hasRoute(each))
         return name ? { name } : { name: 'not-found', params: { path: ['home'] } }
       },
     },
@@ -28,12 +28,6 @@ export function basicRoutes(router: () => Router): RouteRecordRaw[] {
       name: 'unreachable',
       component: () => import('../../views/UnreachableView.vue'),
       meta: { layout: 'plain', access: 'open' },
-    },
-    {
-      path: '/:path(.*)*',
-      name: 'not-found',
-      component: () => import('../../views/NotFoundView.vue'),
-      meta: { layout: 'plain', access: 'open', title: 'common.page.notFoundTitle' },
     },
   ]
 }

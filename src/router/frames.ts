@@ -1,8 +1,6 @@
-import type { RouteLocationNormalized, RouteLocationRaw, Router } from 'vue-router'
-import { ApiProblem } from '../api/http'
+import type { RouteLocationNormalized, Router } from 'vue-router'
 import { i18n, loadTexts } from '../i18n/i18n'
 import { loadLayout, type LayoutName } from '../layouts/layouts'
-import { useSessionStore } from '../stores/session'
 
 /** Texts that every view of a layout may need. The renter's phone carries none of the staff's. */
 const layoutTexts: Record<LayoutName, readonly string[]> = {
@@ -15,28 +13,8 @@ const layoutTexts: Record<LayoutName, readonly string[]> = {
 
 const layoutName = (to: RouteLocationNormalized): LayoutName => to.meta.layout ?? 'staff'
 
-/** Who is not signed in signs in first and comes back; whose role does not do this is told who can. */
-async function admit(to: RouteLocationNormalized, router: Router): Promise<RouteLocationRaw | true> {
-  if (to.meta.access === 'open') return true
-  const session = useSessionStore()
-  try {
-    await session.load()
-  } catch (error) {
-    if (error instanceof ApiProblem) return { name: 'unreachable', query: { next: to.fullPath } }
-    throw error
-  }
-  if (!session.session) {
-    return router.hasRoute('sign-in')
-      ? { name: 'sign-in', query: { next: to.fullPath } }
-      : { name: 'not-found', params: { path: ['sign-in'] } }
-  }
-  const { permission } = to.meta
-  return !permission || session.may(permission) || { name: 'role-cannot', query: { permission } }
-}
-
-export function installGuards(router: Router) {
-  router.beforeEach((to) => admit(to, router))
-
+/** A view is shown when its layout and its texts are there; then the title and the keyboard's place follow it. */
+export function installFrames(router: Router) {
   router.beforeResolve(async (to) => {
     const layout = layoutName(to)
     await Promise.all([loadLayout(layout), loadTexts([...layoutTexts[layout], ...(to.meta.texts ?? [])])])
