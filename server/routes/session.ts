@@ -17,7 +17,7 @@ import { authenticated, endSession, requireSamePassword, startSession } from '..
 import { Problem } from '../errors'
 import { actorOf } from '../middleware/access'
 import type { PersonActor } from '../services/actor'
-import { demoSignIns } from '../services/demo'
+import { demoPeople } from '../services/demo'
 import { provePin, setPin, unlockPin } from '../services/pins'
 import { changeOwnPassword, homeShop, requirePassword, sessionOf } from '../services/sessions'
 import { setUpShop, setupIsOpen } from '../services/setup'
@@ -129,7 +129,7 @@ export const doorRoutes = (): Route[] => [
     access: 'open',
     schemas: { answer: demoAnswer },
     handle: (deps) => async (_req, res) => {
-      res.json(demoAnswer.parse(await demoSignIns(deps)))
+      res.json(demoAnswer.parse(await demoPeople(deps)))
     },
   },
   {

@@ -6,7 +6,7 @@ export const stations = {
   board: 'board',
   fleet: 'ski-pairs',
   callBacks: 'call-backs',
-  office: 'people',
+  office: 'office',
 } as const
 
 export type Station = keyof typeof stations
