@@ -37,7 +37,7 @@ export const counterRoutes: RouteRecordRaw[] = [
     meta: {
       permission: 'renters.write',
       texts: ['rentals', 'form'],
-      title: 'form.page',
+      title: 'rentals.data.page',
       station: 'counter',
     },
   },
