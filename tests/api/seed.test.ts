@@ -1,7 +1,14 @@
 import { sql } from 'drizzle-orm'
-import { beforeAll, describe, expect, it } from 'vitest'
+import { beforeAll, describe, expect, it, vi } from 'vitest'
+import { hashSecret } from '../../server/auth/passwords'
 import { seedDemo } from '../../server/db/seed/seedDemo'
 import { testDatabase, type TestDatabase } from '../support/database'
+
+// The real hashing, counted.
+vi.mock('../../server/auth/passwords', async (original) => {
+  const real = await original<typeof import('../../server/auth/passwords')>()
+  return { ...real, hashSecret: vi.fn(real.hashSecret) }
+})
 
 const today = new Date('2026-01-17T09:40:00Z')
 const one = async (db: TestDatabase['db'], query: ReturnType<typeof sql>) => (await db.execute(query)).rows[0]
@@ -74,8 +81,11 @@ describe('the demo shop', () => {
     expect(await print(418)).not.toBe(first)
   })
 
-  it('is left alone when it is already there', async () => {
+  it('is left alone when it is already there, and a warm start hashes no password for it', async () => {
+    expect(hashSecret).toHaveBeenCalled()
+    vi.mocked(hashSecret).mockClear()
     await seedDemo({ ownerUrl: database.ownerUrl, today })
+    expect(hashSecret).not.toHaveBeenCalled()
     expect(await one(database.db, sql`select count(*)::int n from shops`)).toEqual({ n: 1 })
   })
 })

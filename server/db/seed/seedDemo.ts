@@ -45,13 +45,13 @@ export async function seedDemo({
 }): Promise<{ signIns: DemoSignIn[] }> {
   const { db, close } = openDb(ownerUrl, { max: 1 })
   try {
-    const staffHashes = await hashes()
-    await db.transaction(async (tx) => {
+    const filled = await db.transaction(async (tx) => {
       await tx.execute(sql`select pg_advisory_xact_lock(724002)`)
-      if ((await tx.$count(tables.shops)) > 0) return
-      await fill(tx, today, seed, staffHashes)
+      if ((await tx.$count(tables.shops)) > 0) return false
+      await fill(tx, today, seed, await hashes())
+      return true
     })
-    await db.execute(sql`analyze`)
+    if (filled) await db.execute(sql`analyze`)
     return { signIns: demoSignIns }
   } finally {
     await close()
