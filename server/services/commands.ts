@@ -37,7 +37,8 @@ interface Touched {
 
 /**
  * Runs a command once: in one transaction the service's work, the shop's next sequence number, the event and the
- * log row; after commit the boards are told. The same id with the same body answers what it answered the first
+ * log row; after commit the boards are told. A service may run again after a deadlock, so it changes nothing outside
+ * of its transaction. The same id with the same body answers what it answered the first
  * time; with another body it is refused. Refusals of the domain (409, 422) are final and kept, others are not.
  */
 export async function runCommand<Body, Ids, A extends Actor>(
@@ -52,7 +53,9 @@ export async function runCommand<Body, Ids, A extends Actor>(
   const before = await replay<Ids>(deps, actor.shopId, envelope, bodySha256)
   if (before) return before
   try {
-    const answer = await deps.db.transaction((tx) => once(deps, tx, actor, envelope, bodySha256, service))
+    const answer = await unlessInACircle(() =>
+      deps.db.transaction((tx) => once(deps, tx, actor, envelope, bodySha256, service)),
+    )
     if (answer.event) deps.publish(actor.shopId, answer.event)
     return answer
   } catch (error) {
@@ -67,6 +70,23 @@ export async function runCommand<Body, Ids, A extends Actor>(
       await keepRefusal(deps, actor, envelope, bodySha256, refusal)
     }
     throw refusal ?? error
+  }
+}
+
+const triesInACircle = 3
+
+/**
+ * Two commands that wait for each other's rows: PostgreSQL ends one of them, whose work is then undone and done anew.
+ * The one that goes on has its locks by then, so a second circle of the same two cannot be.
+ */
+async function unlessInACircle<Answer>(run: () => Promise<Answer>): Promise<Answer> {
+  for (let tries = 1; ; tries += 1) {
+    try {
+      return await run()
+    } catch (error) {
+      const { code } = databaseError(error) ?? {}
+      if ((code !== '40P01' && code !== '40001') || tries === triesInACircle) throw error
+    }
   }
 }
 

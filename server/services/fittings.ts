@@ -8,7 +8,14 @@ import { RULES_VERSION } from '#shared/release/rules'
 import type { FittingFacts } from '#shared/schemas/fittingFacts'
 import { fittingFactsOf, openFittingOf } from '../db/queries/fittingFacts'
 import { holderOf } from '../db/queries/fittingParts'
-import { fittingDecisions, fittings, shopSequences } from '../db/schema/schema'
+import {
+  bindingModels,
+  fittingDecisions,
+  fittings,
+  shopSequences,
+  skiModels,
+  skiPairs,
+} from '../db/schema/schema'
 import type { Tx } from '../deps'
 import { Problem } from '../errors'
 import type { PersonActor } from './actor'
@@ -23,8 +30,8 @@ type Locked = Awaited<ReturnType<typeof lockItems>>
 
 /**
  * Takes boots and a ski pair for a renter: computed again from the items' own rows, stored without body values.
- * Locks rental, the fitting that it replaces, then the items in id order; of two clerks the second is told who has
- * the item and since when.
+ * Locks rental and renter, the fitting that it replaces, the items in id order, then their models, so that nothing
+ * that it computes with changes meanwhile; of two clerks the second is told who has the item and since when.
  */
 export const claimFittingService: Does<typeof claimFitting> = async (context, body) => {
   const { tx, actor } = context
@@ -40,6 +47,7 @@ export const claimFittingService: Does<typeof claimFitting> = async (context, bo
     distinct([...items, ...(replaced ? itemsOf(replaced) : [])]),
   )
   await refuseTaken(context, locked, items, replaced?.id)
+  await keepModelsOf(context, body.skiPairId)
 
   const { facts, rental, renter } = await fittingFactsOf(tx, actor.shopId, {
     rentalId: body.rentalId,
@@ -92,6 +100,17 @@ async function refuseTaken(
     const { by, since, number } = holder
     throw new Problem('items.taken', { code: item.code, by, since, number })
   }
+}
+
+/** What the pair's models say stays as it is read here until the claim is done: an edit waits, or was first. */
+async function keepModelsOf({ tx }: CommandContext, skiPairId: string) {
+  await tx
+    .select({ id: skiPairs.id })
+    .from(skiPairs)
+    .innerJoin(skiModels, eq(skiModels.id, skiPairs.skiModelId))
+    .innerJoin(bindingModels, eq(bindingModels.id, skiPairs.bindingModelId))
+    .where(eq(skiPairs.id, skiPairId))
+    .for('share', { of: [skiModels, bindingModels] })
 }
 
 type ReadyFitting = FittingComputation & {

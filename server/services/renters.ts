@@ -60,17 +60,23 @@ export async function addInputs(
   return row!.id
 }
 
-/** Rental, renter and inputs together, rental and renter locked; another shop's is answered like an unknown one. */
+/**
+ * Rental, renter and inputs together, rental and renter locked; another shop's is answered like an unknown one. The
+ * inputs are read once the lock is held: read along with it they would be those from before the wait.
+ */
 export async function lockRental(context: CommandContext, rentalId: string) {
   const [found] = await context.tx
-    .select({ rental: rentals, renter: renters, inputs: fittingInputs })
+    .select({ rental: rentals, renter: renters })
     .from(rentals)
     .innerJoin(renters, eq(renters.id, rentals.renterId))
-    .leftJoin(fittingInputs, eq(fittingInputs.id, renters.currentInputsId))
     .where(and(eq(rentals.id, rentalId), eq(rentals.shopId, context.actor.shopId)))
-    .for('update', { of: [rentals, renters] })
+    .for('update')
   if (!found) throw new Problem('rentals.unknown')
-  return found
+  const { currentInputsId } = found.renter
+  const [inputs] = currentInputsId
+    ? await context.tx.select().from(fittingInputs).where(eq(fittingInputs.id, currentInputsId))
+    : []
+  return { ...found, inputs: inputs ?? null }
 }
 
 /** Name, contact and guardian as the renter's row keeps them. */
