@@ -32,9 +32,13 @@ const formats = {
 export const i18n = createI18n({
   legacy: false,
   locale: bestLocale([remembered(), ...navigator.languages]) as string,
-  fallbackLocale,
+  // Dates of the English screens are British, '1 Dec 2026': 'en' alone would write them the American way.
+  fallbackLocale: { en: ['en-GB'], default: [fallbackLocale] },
   pluralRules: { en: pluralForm, de: pluralForm },
-  datetimeFormats: { en: formats, de: formats },
+  datetimeFormats: { 'en-GB': formats, de: formats },
+  // Names of date formats have no dot; that 'en' finds them at 'en-GB' is meant.
+  missingWarn: /\./,
+  fallbackWarn: /\./,
 })
 
 function loadArea(locale: Locale, area: string): Promise<void> {
