@@ -19,11 +19,14 @@ type OwnRefs = Pick<BodyOf<typeof createSkiPair>, 'skiModelId' | 'bindingModelId
 
 /** Models and site must be of this shop. */
 async function requireOwn(tx: Tx, shopId: string, { skiModelId, bindingModelId, homeSiteId }: OwnRefs) {
-  const own = await Promise.all([
-    tx.$count(skiModels, and(eq(skiModels.id, skiModelId), eq(skiModels.shopId, shopId))),
-    tx.$count(bindingModels, and(eq(bindingModels.id, bindingModelId), eq(bindingModels.shopId, shopId))),
-    tx.$count(sites, and(eq(sites.id, homeSiteId), eq(sites.shopId, shopId))),
-  ])
+  const own = [
+    await tx.$count(skiModels, and(eq(skiModels.id, skiModelId), eq(skiModels.shopId, shopId))),
+    await tx.$count(
+      bindingModels,
+      and(eq(bindingModels.id, bindingModelId), eq(bindingModels.shopId, shopId)),
+    ),
+    await tx.$count(sites, and(eq(sites.id, homeSiteId), eq(sites.shopId, shopId))),
+  ]
   if (own.some((count) => count === 0)) throw new Problem('items.unknown')
 }
 
