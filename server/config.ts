@@ -14,8 +14,6 @@ export interface Config {
   logLevel: string
   /** Vite serves the client, with its own server in front of this one. */
   viteServes: boolean
-  /** Under tests a test_ database may run without durability. */
-  testing: boolean
   /** What this way of serving lacks, said at the start; empty on loopback. */
   lost: string[]
 }
@@ -59,10 +57,12 @@ export function readConfig(env: Env, args: readonly string[]): Config {
     dataDir: path.resolve(root, env.NOTCHWISE_DATA || '.data'),
     logLevel: readLogLevel(env.LOG_LEVEL),
     viteServes: args.includes('--vite-serves'),
-    testing: env.NODE_ENV === 'test',
     lost: loopback ? [] : lostWithoutTls,
   }
 }
+
+/** Whether a test runner started this process: then a test_ database may run without durability. */
+export const underTests = () => process.env.NODE_ENV === 'test'
 
 const lostWithoutTls = [
   'passwords and people’s data that nobody on the network can read',

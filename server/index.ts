@@ -1,7 +1,9 @@
 import { createServer } from 'node:http'
 import type { AddressInfo } from 'node:net'
 import { createApp } from './app'
+import { underTests } from './config'
 import { openDb } from './db/client'
+import { requireDurable } from './db/durability'
 import type { Deps } from './deps'
 import { startJobs } from './jobs/jobs'
 import { createLog } from './log'
@@ -28,10 +30,17 @@ export interface RunningServer {
   close: () => Promise<void>
 }
 
-/** Serves client, API and sockets. Closing refuses new work, lets running requests end, then leaves the database. */
+/**
+ * Serves client, API and sockets, on a database that keeps what it confirmed. Closing refuses new work, lets running
+ * requests end, then leaves the database.
+ */
 export async function startServer(options: ServerOptions): Promise<RunningServer> {
   const log = createLog(options.logLevel)
   const { db, pool, close: closeDb } = openDb(options.databaseUrl)
+  await requireDurable(pool, { testing: underTests() }).catch(async (error) => {
+    await closeDb()
+    throw error
+  })
   const live: Partial<Sockets> = {}
   const deps: Deps = {
     db,

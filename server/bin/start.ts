@@ -1,7 +1,5 @@
 import path from 'node:path'
 import { environment, readConfig, type Config } from '../config'
-import { openDb } from '../db/client'
-import { requireDurable } from '../db/durability'
 import { migrateDatabase } from '../db/migrate'
 import { seedDemo, type DemoSignIn } from '../db/seed/seedDemo'
 import { startServer, type RunningServer } from '../index'
@@ -60,8 +58,6 @@ async function serve(config: Config, ending: Ending) {
 async function prepareDatabase(config: Config, cluster: Cluster) {
   const { ownerUrl, appUrl } = await ensureDatabase(cluster.setupUrl, config.database)
   await step('Bringing the database up to date', () => migrateDatabase(ownerUrl))
-  const { pool, close } = openDb(appUrl, { max: 1 })
-  await requireDurable(pool, config).finally(close)
   if (!config.demo) return { appUrl, signIns: [] }
   const { signIns } = await step('Making the demo shop', () => seedDemo({ ownerUrl, today: new Date() }))
   return { appUrl, signIns }

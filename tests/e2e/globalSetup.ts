@@ -18,6 +18,8 @@ export default async function globalSetup() {
   await migrateDatabase(ownerUrl)
   await seedDemo({ ownerUrl, today: new Date() })
   process.env.TEST_SETUP_URL = cluster.setupUrl('{}')
+  // The stories' servers run in the test runner, on a cluster that keeps nothing.
+  process.env.NODE_ENV = 'test'
   return async () => {
     await admin.query(`drop database if exists ${template} with (force)`)
     await admin.end()
