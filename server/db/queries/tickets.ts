@@ -97,15 +97,18 @@ async function standing(db: Reader, of: Fitting[]) {
     : []
   return (fitting: Fitting) => {
     const both = skiRows.filter((ski) => ski.skiPairId === fitting.skiPairId)
-    const distances = both.map(({ presetToe: toe, presetHeel: heel }) =>
-      notchDistance(toe === null || heel === null ? null : { toe, heel }, fitting.track),
-    )
     const read = both.filter((ski) =>
       readRows.some(
         (each) =>
           each.fittingId === fitting.id && each.skiId === ski.id && each.presetVersion === ski.presetVersion,
       ),
     )
+    // A ski that was read stands where it was decided to stand: nothing is left to move on it.
+    const distances = both
+      .filter((ski) => !read.includes(ski))
+      .map(({ presetToe: toe, presetHeel: heel }) =>
+        notchDistance(toe === null || heel === null ? null : { toe, heel }, fitting.track),
+      )
     return {
       notches: distances.reduce<number | null>(
         (sum, each) => (sum === null || each === null ? null : sum + each),
