@@ -1,7 +1,7 @@
-import { massBand } from '#shared/release/bands'
+import { isLight } from '#shared/release/isLight'
 import type { ReleaseInput } from '#shared/release/releaseInput'
 import type { ReleaseResult, ReleaseSetting } from '#shared/release/releaseResult'
-import { ageRule, lightSkier } from '#shared/release/rules'
+import { ageRule } from '#shared/release/rules'
 import { editions, selectionRows } from '#shared/release/selectionTable'
 import type { ReleaseOutcome } from '#shared/schemas/fittings'
 import { rowStepsOf } from './rowSteps'
@@ -17,8 +17,7 @@ export type DecidedRows = (typeof decidableRows)[number]
 
 /** Somebody for whom no value above the computed one may be decided or asked for: 9 and under, or up to 21 kg. */
 export function isChildForValues({ age, mass }: Pick<ReleaseInput, 'age' | 'mass'>): boolean {
-  const band = massBand(mass)
-  return age <= ageRule.childUpTo || band.whole <= lightSkier[band.unit]
+  return age <= ageRule.childUpTo || isLight(mass)
 }
 
 /** A table answer as it may be stored: without the body values. */

@@ -2,6 +2,7 @@ import { invalidInput } from '#shared/calc/invalidInput'
 import { columnOf, heightBand, massBand } from './bands'
 import type { ReleaseInput, Request } from './releaseInput'
 import type { ReleaseResult, ReleaseStep } from './releaseResult'
+import { isLight } from './isLight'
 import { ageRule, lightSkier, typeShift, type SkierType } from './rules'
 import { editions, selectionRows, type EditionName, type SelectionRow } from './selectionTable'
 import { malformedField } from './wellFormed'
@@ -44,12 +45,12 @@ export function releaseSetting(input: ReleaseInput): ReleaseResult {
   if (mass.index === null || massRow === null) return { ok: false, reason: 'mass_below_table', steps }
 
   const upTo = lightSkier[mass.unit]
-  const isLight = mass.whole <= upTo
-  if (isLight && (skierType === 'III' || skierType === 'III+')) {
+  const light = isLight(input.mass)
+  if (light && (skierType === 'III' || skierType === 'III+')) {
     steps.push({ rule: 'light_skier', skierType, unit: mass.unit, upTo })
     return { ok: false, reason: 'type_not_allowed_under_22_kg', steps }
   }
-  if (request > 0 && (isLight || age <= ageRule.childUpTo)) {
+  if (request > 0 && (light || age <= ageRule.childUpTo)) {
     steps.push({ rule: 'request_of_child', age, ageUpTo: ageRule.childUpTo, unit: mass.unit, upTo })
     return { ok: false, reason: 'request_not_allowed', steps }
   }

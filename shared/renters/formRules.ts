@@ -1,9 +1,9 @@
 import { addDays, ageOn, type Day } from '#shared/dates/days'
 import { agesForRental } from '#shared/release/agesForRental'
-import { inputLimits, lightSkier, type SkierType } from '#shared/release/rules'
+import { isLight } from '#shared/release/isLight'
+import { inputLimits, type SkierType } from '#shared/release/rules'
 import type { Born, Contact, Period, RenterForm } from '#shared/schemas/renters'
 import type { Mass } from '#shared/units/bodySchemas'
-import { wholeMass } from '#shared/units/wholeUnits'
 
 /** The fields of a form in the order in which they are asked for. */
 export const formFields = [
@@ -53,12 +53,6 @@ export function ageForTable({ birthDate, age }: Born, { startsOn, endsOn }: Peri
 export function ageOnFirstDay({ birthDate, age }: Born, startsOn: Day): number | null {
   if (birthDate === null) return age
   return birthDate > startsOn ? null : ageOn(birthDate, startsOn)
-}
-
-/** Up to 21 kg (47 lb), as typed: cut down to whole units, as the table does. */
-export function isLight(mass: Mass): boolean {
-  const { unit, whole } = wholeMass(mass)
-  return whole <= lightSkier[unit]
 }
 
 /** A birth date, or an age that was said, and one that a person can have. The date counts where both are there. */

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { draftFrom, emptyDraft, readDraft, type FormDraft } from '#shared/renters/draft'
-import { ageForTable, formProblems, isLight } from '#shared/renters/formRules'
+import { isLight } from '#shared/release/isLight'
+import { ageForTable, formProblems } from '#shared/renters/formRules'
 import { renterForm } from '#shared/schemas/renters'
 
 const facts = { today: '2027-02-14', ageOfMajority: 18 }
