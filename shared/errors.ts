@@ -49,7 +49,6 @@ export const problems = {
   'items.unknown': 404,
   'items.taken': 409,
   'items.state': 409,
-  'items.mixed_pair': 409,
   'items.held': 409,
   'items.code_taken': 409,
   'items.changed': 409,
@@ -61,7 +60,6 @@ export const problems = {
   'skis.not_on_rail': 422,
 
   'models.not_approved': 409,
-  'models.in_use': 409,
   'models.name_taken': 409,
   'models.geometry': 422,
   'models.sheet_unfinished': 422,

@@ -2,13 +2,12 @@ import { randomBytes } from 'node:crypto'
 import { and, eq, inArray, sql } from 'drizzle-orm'
 import type { BodyOf, IdsOf } from '#shared/api/define'
 import type { changeContact, changeInputs, requestRow } from '#shared/api/rentals'
-import { ageRule } from '#shared/release/rules'
+import { isChildForValues } from '#shared/fitting/decidedValue'
 import {
   ageForTable,
   ageOnFirstDay,
   bornProblems,
   contactProblems,
-  isLight,
   typeProblems,
   type FieldProblem,
 } from '#shared/renters/formRules'
@@ -190,10 +189,6 @@ export const changeInputsService: Does<typeof changeInputs> = async (context, bo
   return { inputsId }
 }
 
-/** Whether nobody may ask for more: 9 and under, or up to 21 kg (47 lb), as cut to whole units. */
-export const isChildForValues = ({ age, mass }: Pick<Inputs, 'age' | 'mass'>): boolean =>
-  age <= ageRule.childUpTo || isLight(mass)
-
 export const requestRowService: Does<typeof requestRow> = async (context, body) => {
   const { rental, renter, inputs } = await lockRental(context, body.rentalId)
   if (!inputs || inputs.id !== body.seenInputsId) throw new Problem('renters.changed')
@@ -225,8 +220,7 @@ async function signedRequest(
   if (!signature || !signedName) throw new Problem('renters.unsigned')
   const { ageOfMajority } = await shopById(context.tx, context.actor.shopId)
   const age = ageOnFirstDay({ birthDate: renter.birthDate, age: inputs.age }, rental.startsOn) ?? inputs.age
-  if (age < ageOfMajority && signedName !== renter.guardianName)
-    throw new Problem('renters.guardian', { name: renter.guardianName ?? '' })
+  if (age < ageOfMajority && signedName !== renter.guardianName) throw new Problem('renters.guardian')
   const { bytes, type } = imageFromDataUrl(signature)
   if (type !== 'image/png') throw new Problem('request.malformed')
   return {

@@ -55,6 +55,9 @@ describe('words for everything that has a code', () => {
     const worded = { ...areas.problems![locale], ...areas.staffProblems![locale] }
     const missing = Object.keys(problems).filter((code) => !worded[`${code}.what`] || !worded[`${code}.next`])
     expect(missing).toEqual([])
+    const codes = Object.keys(worded).map((key) => key.split('.').slice(0, 2).join('.'))
+    // What can go wrong before an answer exists is the client's own to say.
+    expect(codes.filter((code) => !(code in problems) && !code.startsWith('network.'))).toEqual([])
   })
 
   it.each(Object.keys(locales))('%s words every state, role and station', (locale) => {
