@@ -35,7 +35,7 @@ export const i18n = createI18n({
   // Dates of the English screens are British, '1 Dec 2026': 'en' alone would write them the American way.
   fallbackLocale: { en: ['en-GB'], default: [fallbackLocale] },
   pluralRules: { en: pluralForm, de: pluralForm },
-  datetimeFormats: { 'en-GB': formats, de: formats },
+  datetimeFormats: { 'en-GB': formats, de: formats } as Record<string, typeof formats>,
   // Names of date formats have no dot; that 'en' finds them at 'en-GB' is meant.
   missingWarn: /\./,
   fallbackWarn: /\./,
