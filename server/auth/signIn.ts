@@ -45,7 +45,8 @@ export async function startSession(
     })
   })
   writeNoMore(req)
-  deps.dropSockets({ sessionId: before })
+  // Screens of the one before hear of it once this browser holds the new cookie: then they ask who is here now.
+  req.res?.once('finish', () => deps.dropSockets({ sessionId: before }))
   if (req.session.deviceId) {
     await keepOneSessionAt(deps, req.session.deviceId)
     if (!(await sessionStands(deps, req.sessionID))) {

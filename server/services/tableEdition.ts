@@ -1,55 +1,15 @@
-import { and, desc, eq } from 'drizzle-orm'
 import type { AnswerOf, BodyOf, IdsOf } from '#shared/api/define'
-import type {
-  approveTableEdition,
-  getTableEdition,
-  TableApproval,
-  withdrawTableEdition,
-} from '#shared/api/tableEdition'
+import type { approveTableEdition, getTableEdition, withdrawTableEdition } from '#shared/api/tableEdition'
 import { ruleStandings, RULES_VERSION } from '#shared/release/rules'
 import { editions, selectionRows, type EditionName } from '#shared/release/selectionTable'
-import { people, tableApprovals } from '../db/schema/schema'
+import { shopEdition, tableApproval } from '../db/queries/tableApproval'
+import { tableApprovals } from '../db/schema/schema'
 import type { Reader } from '../deps'
 import { Problem } from '../errors'
 import type { PersonActor } from './actor'
 import type { Service } from './commands'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
-
-/** The edition that a shop's fittings are computed with. */
-export const shopEdition: EditionName = 'eight-column'
-
-/** What the shop's head technician said last of this edition with the rules as they are now. */
-export async function tableApproval(
-  db: Reader,
-  shopId: string,
-  edition: EditionName = shopEdition,
-): Promise<TableApproval> {
-  const [latest] = await db
-    .select({
-      approved: tableApprovals.approved,
-      words: tableApprovals.comparedWith,
-      at: tableApprovals.occurredAt,
-      by: people.name,
-    })
-    .from(tableApprovals)
-    .innerJoin(people, eq(people.id, tableApprovals.personId))
-    .where(
-      and(
-        eq(tableApprovals.shopId, shopId),
-        eq(tableApprovals.edition, edition),
-        eq(tableApprovals.rulesVersion, RULES_VERSION),
-      ),
-    )
-    .orderBy(desc(tableApprovals.recordedAt), desc(tableApprovals.id))
-    .limit(1)
-  if (!latest) return { approved: false, withdrawn: null }
-  const { by, words } = latest
-  const at = latest.at.toISOString()
-  return latest.approved
-    ? { approved: true, by, at, comparedWith: words }
-    : { approved: false, withdrawn: { by, at, reason: words } }
-}
 
 /** The whole table with where each part comes from, and what the shop said of it. */
 export async function tableEditionOf(db: Reader, shopId: string): Promise<AnswerOf<typeof getTableEdition>> {

@@ -34,6 +34,12 @@ export const useSessionStore = defineStore('session', () => {
     return session.value
   }
 
+  /** What the server says of this session now; ended, the screen stays and asks to sign in again. */
+  function meet(answer: SessionAnswer | null) {
+    if (answer) take(answer)
+    else expired.value = session.value !== null
+  }
+
   async function signIn(email: string, password: string) {
     take(await startSession(email, password))
   }
@@ -45,5 +51,5 @@ export const useSessionStore = defineStore('session', () => {
 
   whenSignedOut(() => (expired.value = session.value !== null))
 
-  return { session, person, site, expired, may, load, take, signIn, signOut }
+  return { session, person, site, expired, may, load, meet, signIn, signOut }
 })

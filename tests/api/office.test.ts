@@ -16,7 +16,7 @@ import { releaseSetting } from '#shared/release/releaseSetting'
 import { RULES_VERSION } from '#shared/release/rules'
 import { shops, shopTexts } from '../../server/db/schema/schema'
 import { currentText, requireUsable } from '../../server/services/texts'
-import { tableApproval } from '../../server/services/tableEdition'
+import { tableApproval } from '../../server/db/queries/tableApproval'
 import { testShop, type TestShop } from '../support/shop'
 
 let shop: TestShop

@@ -48,6 +48,7 @@ export const roleRows: Record<string, Who> = {
 
   'get /api/board': everyone,
   'get /api/board/since/:seq': everyone,
+  'get /api/board/names': everyone,
 
   'post /api/doors/open': everyone,
   'post /api/doors/close': everyone,

@@ -8,9 +8,9 @@ import {
 } from '#shared/schemas/fittingFacts'
 import type { Reader } from '../../deps'
 import { Problem } from '../../errors'
-import { shopEdition, tableApproval } from '../../services/tableEdition'
 import { fittingInputs, fittings, people, rentals, renters, shops } from '../schema/schema'
 import { decisionFacts, holderOf, ownBootsFact, shopBootsFact, skiPairFacts } from './fittingParts'
+import { shopEdition, tableApproval } from './tableApproval'
 
 export interface FittingParts {
   rentalId: string
