@@ -58,6 +58,10 @@ export async function request<Answer>(
 export type Query = Record<string, string | number | boolean | null | undefined>
 
 function search(query: Query = {}): string {
-  const given = Object.entries(query).filter(([, value]) => value !== null && value !== undefined && value !== '')
-  return given.length === 0 ? '' : `?${new URLSearchParams(given.map(([key, value]) => [key, String(value)]))}`
+  const given = Object.entries(query).filter(
+    ([, value]) => value !== null && value !== undefined && value !== '',
+  )
+  return given.length === 0
+    ? ''
+    : `?${new URLSearchParams(given.map(([key, value]) => [key, String(value)]))}`
 }

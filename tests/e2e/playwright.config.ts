@@ -2,10 +2,11 @@ import { defineConfig } from '@playwright/test'
 
 export default defineConfig({
   testDir: '.',
+  testMatch: '*.story.ts',
   outputDir: '../../.cache/e2e',
   workers: 1,
   retries: 0,
-  timeout: 90_000,
+  timeout: 60_000,
   expect: { timeout: 10_000 },
   globalSetup: './globalSetup.ts',
   reporter: [['list'], ['json']],
