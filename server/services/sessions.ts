@@ -14,7 +14,13 @@ export async function sessionOf(deps: Deps, actor: PersonActor): Promise<Session
       name: people.name,
       locale: people.locale,
       pinHash: memberships.pinHash,
-      shop: { id: shops.id, name: shops.name, zone: shops.zone, demo: shops.demo },
+      shop: {
+        id: shops.id,
+        name: shops.name,
+        zone: shops.zone,
+        demo: shops.demo,
+        claimAgesMinutes: shops.claimAgesMinutes,
+      },
     })
     .from(memberships)
     .innerJoin(people, eq(people.id, memberships.personId))

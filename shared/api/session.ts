@@ -8,7 +8,14 @@ import { id, instant, line, requiredLine } from '#shared/schemas/common'
 /** Who is signed in, where, and what they may do. */
 export const sessionAnswer = z.object({
   person: z.object({ id, name: z.string(), locale: z.string() }),
-  shop: z.object({ id, name: z.string(), zone: z.string(), demo: z.boolean() }),
+  shop: z.object({
+    id,
+    name: z.string(),
+    zone: z.string(),
+    demo: z.boolean(),
+    /** From then on an unfinished claim is shown as ageing. */
+    claimAgesMinutes: z.number().int(),
+  }),
   sites: z.array(z.object({ id, name: z.string() })),
   device: z.object({ id, name: z.string(), station: z.string(), siteId: id }).nullable(),
   roles: z.array(z.enum(roles)),

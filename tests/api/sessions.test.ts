@@ -1,7 +1,7 @@
 import { beforeAll, describe, expect, test } from 'vitest'
 import { eq } from 'drizzle-orm'
 import { changePerson, disablePerson, enablePerson } from '#shared/api/people'
-import { session } from '../../server/db/schema/schema'
+import { session, shops } from '../../server/db/schema/schema'
 import { Browser } from '../support/browser'
 import { addPerson, addShop, addStaff, testPassword } from '../support/people'
 import { testServer, type TestServer } from '../support/server'
@@ -67,6 +67,13 @@ describe('signing in', () => {
     const [cookie] = answer.headers['set-cookie']!
     expect(cookie).toMatch(/HttpOnly/i)
     expect(cookie).toMatch(/SameSite=Lax/i)
+  })
+
+  test('tells the screens what the shop set: when an unfinished claim begins to age', async () => {
+    await on.database.db.update(shops).set({ claimAgesMinutes: 45 }).where(eq(shops.id, shopId))
+    expect((await manager.get('/api/session')).body).toMatchObject({
+      shop: { id: shopId, claimAgesMinutes: 45 },
+    })
   })
 
   test('an unknown person and a wrong password are answered alike', async () => {
