@@ -66,6 +66,7 @@ export default defineConfigWithVueTs(
     {
       ...serverRoom(),
       '^(express|socket\\.io)(/|$)|/(routes|middleware|sockets)/': 'the database knows nothing of HTTP',
+      '/services/': 'services know the database, not the other way round',
     },
     ['server/db/seed/**'],
   ),

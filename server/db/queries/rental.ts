@@ -1,12 +1,11 @@
 import { and, asc, desc, eq } from 'drizzle-orm'
 import { alias } from 'drizzle-orm/pg-core'
-import { rentalDays } from '#shared/dates/days'
+import { dayInZone, rentalDays } from '#shared/dates/days'
 import type { OwnBoots, RentalDetail } from '#shared/api/rentals'
 import type { GuardianRelation } from '#shared/renters/guardian'
 import type { RenterInputs, RenterLocale } from '#shared/schemas/renters'
 import type { Reader } from '../../deps'
 import { Problem } from '../../errors'
-import { shopDay } from '../../services/shops'
 import {
   boots,
   fittingDecisions,
@@ -70,7 +69,7 @@ export async function rentalById(
     fittings: await fittingsOf(db, rentalId),
     decisions: await decisionsOf(db, rentalId),
     shop: {
-      today: shopDay(shop, now),
+      today: dayInZone(now, shop.zone),
       ageOfMajority: shop.ageOfMajority,
       nearMassKg: shop.nearMassKg,
       nearHeightCm: shop.nearHeightCm,

@@ -32,6 +32,7 @@ describe('no arrow but src to shared and server to shared', () => {
     ['server/routes/a.ts', 'drizzle-orm'],
     ['server/routes/a.ts', '../db/schema/schema'],
     ['server/db/queries/a.ts', '../../routes/route'],
+    ['server/db/queries/a.ts', '../../services/shops'],
     ['server/app.ts', '../tests/support/app'],
     ['shared/units/a.ts', 'node:fs'],
     ['shared/units/a.ts', 'vue'],
@@ -47,6 +48,7 @@ describe('no arrow but src to shared and server to shared', () => {
     ['server/services/a.ts', '#shared/errors'],
     ['server/services/a.ts', 'drizzle-orm'],
     ['server/routes/a.ts', '../services/board'],
+    ['server/db/seed/a.ts', '../../services/defaultTexts'],
     ['shared/units/a.ts', 'zod'],
     ['shared/units/a.ts', './exact'],
   ])('%s may import %s', async (file, from) => {
