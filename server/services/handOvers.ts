@@ -23,6 +23,7 @@ import { itemsOf, lockFitting } from './doubt'
 import { acknowledgementInForce } from './handOverToSign'
 import { imageFromDataUrl } from './pictures'
 import { changeState, lockItems } from './stateChanges'
+import { requireUsable } from './texts'
 
 type Body = BodyOf<typeof recordHandOver>
 type Context = CommandContext<PersonActor>
@@ -32,7 +33,8 @@ const sides = ['left', 'right'] as const
 
 /**
  * The set leaves: both skis and both boots are exactly this fitting's, the renter (or a minor's guardian) read the
- * numbers and signed the text that is in force. The database refuses it when anything changed since the bench.
+ * numbers and signed the text that is in force, which the shop has reviewed. The database refuses it when anything
+ * changed since the bench.
  */
 export const recordHandOverService: Service<Body, IdsOf<typeof recordHandOver>, PersonActor> = async (
   context,
@@ -44,6 +46,7 @@ export const recordHandOverService: Service<Body, IdsOf<typeof recordHandOver>, 
   await requireSigner(context, fitting, body)
   const text = await acknowledgementInForce(context.tx, context.actor.shopId, body.textId)
   if (!text) throw new Problem('handOvers.text')
+  await requireUsable(context.tx, context.actor.shopId, text)
   const handOverId = await insertHandOver(context, fitting, body, text)
   for (const item of items) {
     const { siteId, state: from } = item

@@ -9,7 +9,7 @@ import { claimFitting } from '#shared/api/fittings'
 import { getHandOver, getReadySets, recordHandOver } from '#shared/api/handOvers'
 import { getBindingModel, saveBindingModel } from '#shared/api/models'
 import { changeContact, changeInputs, readOwnBoots, requestRow, type RentalDetail } from '#shared/api/rentals'
-import { writeText } from '#shared/api/shop'
+import { reviewText, writeText } from '#shared/api/shop'
 import { readPreset } from '#shared/api/skiPairs'
 import {
   boots,
@@ -22,6 +22,7 @@ import {
   skiPairs,
   skis,
 } from '../../server/db/schema/schema'
+import { textSha256 } from '../../server/services/texts'
 import {
   handOver,
   handOverBody,
@@ -237,16 +238,19 @@ describe('who signs, and what', () => {
   it('a text that was replaced since it was shown is read again', async () => {
     const ticket = await signedTicket(shop)
     const body = await handOverBody(shop, ticket)
-    await shop.as('manager').send(writeText, {
-      kind: 'acknowledgement',
-      locale: 'en',
-      body: 'I have read the numbers on my two skis.',
-    })
+    const wording = { kind: 'acknowledgement' as const, locale: 'en' as const }
+    const words = 'I have read the numbers on my two skis.'
+    await shop.as('manager').send(writeText, { ...wording, body: words })
+    await shop.as('manager').send(reviewText, { ...wording, sha256: textSha256(words) })
     expect((await shop.as('counter').send(recordHandOver, body)).code).toBe('handOvers.text')
     expect((await handOver(shop, ticket)).status).toBe(201)
   })
 
   it('the text comes in the language asked for, marked while no manager signed it', async () => {
+    await shop.db
+      .update(shopTexts)
+      .set({ reviewedBy: null, reviewedAt: null })
+      .where(and(eq(shopTexts.shopId, shop.id), eq(shopTexts.locale, 'de')))
     const ticket = await signedTicket(shop)
     const { body } = await shop
       .as('counter')

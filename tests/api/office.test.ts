@@ -17,6 +17,7 @@ import { RULES_VERSION } from '#shared/release/rules'
 import { shops, shopTexts } from '../../server/db/schema/schema'
 import { currentText, requireUsable } from '../../server/services/texts'
 import { tableApproval } from '../../server/db/queries/tableApproval'
+import { handOver, signedTicket } from '../support/bench'
 import { testShop, type TestShop } from '../support/shop'
 
 let shop: TestShop
@@ -70,13 +71,20 @@ describe('sites', () => {
 })
 
 describe('texts', () => {
+  /** A shop as it is made: nobody has signed its texts yet. */
+  async function unsigned(): Promise<TestShop> {
+    const fresh = await shop.another()
+    const open = { reviewedBy: null, reviewedAt: null }
+    await fresh.db.update(shopTexts).set(open).where(eq(shopTexts.shopId, fresh.id))
+    return fresh
+  }
   const rows = async (at: TestShop) =>
     (await at.as('manager').get<AnswerOf<typeof listTexts>>(listTexts.path)).body.rows
   const text = async (at: TestShop, kind: string, locale = 'en') =>
     (await rows(at)).find(({ current }) => current.kind === kind && current.locale === locale)!
 
   test('the product brings its own in both languages, and nobody has signed them', async () => {
-    const fresh = await shop.another()
+    const fresh = await unsigned()
     const all = await rows(fresh)
     expect(all.map(({ current }) => [current.kind, current.locale, current.reviewed])).toEqual([
       ['acknowledgement', 'en', null],
@@ -87,7 +95,7 @@ describe('texts', () => {
   })
 
   test('a real shop cannot use what nobody signed; the demo shop can', async () => {
-    const fresh = await shop.another()
+    const fresh = await unsigned()
     const current = await currentText(fresh.db, fresh.id, 'acknowledgement', 'en')
     await expect(requireUsable(fresh.db, fresh.id, current)).rejects.toMatchObject({
       code: 'texts.unreviewed',
@@ -97,7 +105,7 @@ describe('texts', () => {
   })
 
   test('signed, it is usable, and says who signed it', async () => {
-    const fresh = await shop.another()
+    const fresh = await unsigned()
     const { current } = await text(fresh, 'acknowledgement')
     const { kind, locale, sha256 } = current
     expect((await fresh.as('manager').send(reviewText, { kind, locale, sha256 })).status).toBe(201)
@@ -109,7 +117,7 @@ describe('texts', () => {
   })
 
   test('a new wording waits until it is signed; until then renters read the signed one', async () => {
-    const fresh = await shop.another()
+    const fresh = await unsigned()
     const manager = fresh.as('manager')
     const { current } = await text(fresh, 'acknowledgement')
     await manager.send(reviewText, { kind: current.kind, locale: 'en', sha256: current.sha256 })
@@ -131,7 +139,7 @@ describe('texts', () => {
   })
 
   test('the sentences about skiing are signed as they stand in the program', async () => {
-    const fresh = await shop.another()
+    const fresh = await unsigned()
     const { current } = await text(fresh, 'skier_types', 'de')
     expect(current.body).toContain('Langsam und bedacht')
     const { kind, locale, sha256 } = current
@@ -143,7 +151,7 @@ describe('texts', () => {
   })
 
   test('ten wordings sent at once get ten versions', async () => {
-    const fresh = await shop.another()
+    const fresh = await unsigned()
     const written = await Promise.all(
       Array.from({ length: 10 }, (_, n) =>
         fresh
@@ -207,5 +215,25 @@ describe('the table edition', () => {
     expect((await shop.as('head_technician').send(approveTableEdition, six)).code).toBe(
       'tableEdition.changed',
     )
+  })
+})
+
+describe('a hand-over with a text', () => {
+  test('that nobody of a real shop signed is refused; signed, it goes; in the demo it goes with its mark', async () => {
+    const fresh = await shop.another()
+    const review = (by: string | null) =>
+      fresh.db
+        .update(shopTexts)
+        .set({ reviewedBy: by, reviewedAt: by ? new Date() : null })
+        .where(eq(shopTexts.shopId, fresh.id))
+    await review(null)
+    const ticket = await signedTicket(fresh)
+    expect((await handOver(fresh, ticket)).code).toBe('texts.unreviewed')
+    await review(fresh.people.manager.id)
+    expect((await handOver(fresh, ticket)).status).toBe(201)
+
+    await review(null)
+    await fresh.db.update(shops).set({ demo: true }).where(eq(shops.id, fresh.id))
+    expect((await handOver(fresh, await signedTicket(fresh))).status).toBe(201)
   })
 })

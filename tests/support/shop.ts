@@ -1,10 +1,11 @@
 import { randomUUID } from 'node:crypto'
+import { eq } from 'drizzle-orm'
 import type supertest from 'supertest'
 import type { Command } from '#shared/api/define'
 import type { ProblemCode, ProblemParams } from '#shared/errors'
 import { RULES_VERSION } from '#shared/release/rules'
 import { deviceCookie, pinHeader } from '../../server/auth/actors'
-import { tableApprovals } from '../../server/db/schema/schema'
+import { shopTexts, tableApprovals } from '../../server/db/schema/schema'
 import { testApp, type TestApp } from './app'
 import { addShop, addStaff, enrolDevice, testPassword, type Who } from './people'
 import { addFitting, addRental, type RentalValues, type TestRental } from './rentals'
@@ -58,6 +59,7 @@ export async function shopIn(app: TestApp, name: string) {
   const { db } = app.database
   const { shopId, siteIds } = await addShop(db, name)
   const people = await addStaff(db, shopId)
+  await signTexts(db, shopId, people.manager.id)
   const inShop = { shopId, siteId: siteIds[0], personId: people.head_technician.id }
   const makes = makers(db, inShop)
 
@@ -112,6 +114,12 @@ export async function shopIn(app: TestApp, name: string) {
         occurredAt: new Date(),
       })),
   }
+}
+
+/** The manager read the shop's texts and signed them; a real shop hands nothing over before. */
+async function signTexts(db: TestApp['database']['db'], shopId: string, personId: string) {
+  const reviewed = { reviewedBy: personId, reviewedAt: new Date() }
+  await db.update(shopTexts).set(reviewed).where(eq(shopTexts.shopId, shopId))
 }
 
 function person(agentOf: () => Promise<ReturnType<typeof supertest.agent>>): Person {
