@@ -1,6 +1,6 @@
-import { and, eq, inArray, isNull, or, sql } from 'drizzle-orm'
+import { and, eq, inArray, isNull, or, sql, type SQL } from 'drizzle-orm'
 import type { ItemState } from '#shared/lifecycle/itemStates'
-import type { VoidReason } from '#shared/lifecycle/fittingStates'
+import { openFittingStates, type VoidReason } from '#shared/lifecycle/fittingStates'
 import { callBacks, fittings, rentalItems } from '../db/schema/schema'
 import { Problem } from '../errors'
 import { personIdOf } from './actor'
@@ -85,6 +85,7 @@ export async function doubtFittings(
     of.skiPairIds?.length ? inArray(fittings.skiPairId, of.skiPairIds) : undefined,
   )
   if (!subject) return
+  await waitForHandOvers(context, subject)
   const stillOut = sql`exists (select 1 from ${rentalItems} where ${rentalItems.fittingId} = ${fittings.id} and ${rentalItems.backAt} is null)`
   const found = await context.tx
     .select()
@@ -93,10 +94,7 @@ export async function doubtFittings(
       and(
         eq(fittings.shopId, context.actor.shopId),
         subject,
-        or(
-          inArray(fittings.state, ['claimed', 'prepared']),
-          and(eq(fittings.state, 'handed_over'), stillOut),
-        ),
+        or(inArray(fittings.state, [...openFittingStates]), and(eq(fittings.state, 'handed_over'), stillOut)),
       ),
     )
     .orderBy(fittings.id)
@@ -105,6 +103,19 @@ export async function doubtFittings(
     if (fitting.state === 'handed_over') await openCallBack(context, fitting, reason)
     else await endFitting(context, fitting, { state: 'void', reason })
   }
+}
+
+/**
+ * Locks the open fittings. One that is handed over at this very moment is waited for, and what that wrote shows only
+ * to a statement that begins afterwards.
+ */
+async function waitForHandOvers({ tx, actor }: CommandContext, subject: SQL) {
+  await tx
+    .select({ id: fittings.id })
+    .from(fittings)
+    .where(and(eq(fittings.shopId, actor.shopId), subject, inArray(fittings.state, [...openFittingStates])))
+    .orderBy(fittings.id)
+    .for('update')
 }
 
 /** Opens a call-back for a fitting that is out; one open entry per fitting and cause. */

@@ -80,6 +80,9 @@ export const changeSkiPairService: Does<typeof changeSkiPair> = async (
   await requireOwn(tx, actor.shopId, values)
   const otherBinding = values.bindingModelId !== before.bindingModelId
   if (otherBinding) await doubtFittings(context, { skiPairId: id }, 'binding_model_changed')
+  // Another model may have its mounting mark elsewhere.
+  if (values.skiModelId !== before.skiModelId)
+    await doubtFittings(context, { skiPairId: id }, 'ski_pair_changed')
   const now = { ...values, rackPlace: values.rackPlace || null }
   await tx
     .update(skiPairs)

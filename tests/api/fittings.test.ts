@@ -24,6 +24,7 @@ import {
   stateChanges,
 } from '../../server/db/schema/schema'
 import { testShop, type TestShop } from '../support/shop'
+import { someoneWaits } from '../support/waits'
 import { staff } from '../support/people'
 import { addBindingModel, addPair, addSkiModel } from '../support/things'
 
@@ -134,14 +135,7 @@ describe('taking boots and a pair while somebody changes what it is computed fro
     await shop.db.transaction(async (tx) => {
       await change(tx)
       sent = claim(body)
-      await expect
-        .poll(async () => {
-          const { rows } = await shop.db.execute(
-            sql`select count(*)::int n from pg_stat_activity where datname = current_database() and wait_event_type = 'Lock'`,
-          )
-          return rows
-        })
-        .toEqual([{ n: 1 }])
+      await someoneWaits(shop.db)
     })
     const answer = await sent!
     const [row] = await shop.db.select().from(fittings).where(eq(fittings.rentalId, body.rentalId))

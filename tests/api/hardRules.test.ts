@@ -4,18 +4,22 @@ import pg from 'pg'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { changeBoots } from '#shared/api/boots'
 import { openQuarantine } from '#shared/api/items'
+import { saveSkiModel } from '#shared/api/models'
 import { readPreset } from '#shared/api/skiPairs'
 import {
   bindingModels,
+  callBacks,
   boots as bootsTable,
   fittingInputs,
   fittings,
   renters,
+  skiModels,
   skis,
 } from '../../server/db/schema/schema'
 import { databaseError } from '../../server/errors'
-import { preparedSet, setOut, type TestSet } from '../support/handOvers'
+import { handOver as handOverSet, preparedSet, setOut, type TestSet } from '../support/handOvers'
 import { testShop, type TestShop } from '../support/shop'
+import { someoneWaits } from '../support/waits'
 
 let shop: TestShop
 let owner: pg.Client
@@ -199,6 +203,37 @@ describe('nothing that changed since it was signed is handed over', () => {
       .from(fittings)
       .where(eq(fittings.id, set.fittingId))
     expect(row!.changed).toEqual(['binding_model'])
+  })
+
+  it('not after the skis’ mounting mark moved', async () => {
+    const other = await shop.another()
+    const set = await preparedSet(other)
+    await other.db.update(skiModels).set({ offsetMm: 8 }).where(eq(skiModels.shopId, other.id))
+    const [row] = await other.db
+      .select({ changed: sql<string[]>`changed_since(${fittings})` })
+      .from(fittings)
+      .where(eq(fittings.id, set.fittingId))
+    expect(row!.changed).toEqual(['ski_pair'])
+  })
+
+  it('what is handed over while the model of its skis is edited is called back', async () => {
+    const other = await shop.another()
+    const set = await preparedSet(other)
+    const [model] = await other.db.select().from(skiModels).where(eq(skiModels.shopId, other.id))
+    const { id, name, waistMm, junior } = model!
+    const edit = async () =>
+      other.as('manager').send(saveSkiModel, { id, name, waistMm, offsetMm: 8, junior })
+    let editing: ReturnType<typeof edit> | undefined
+    await other.agent('manager')
+    await other.db.transaction(async (tx) => {
+      await handOverSet(tx as unknown as TestShop['db'], other, set)
+      editing = edit()
+      await someoneWaits(other.db)
+    })
+    const edited = await editing!
+    expect(edited.status).toBe(201)
+    const open = await other.db.select().from(callBacks).where(eq(callBacks.fittingId, set.fittingId))
+    expect(open.map(({ cause }) => cause)).toEqual(['ski_pair_changed'])
   })
 
   it('a void fitting is not signed, prepared or handed over any more', async () => {

@@ -11,6 +11,7 @@ import { callBacks, fittings, officeChanges, presetChanges } from '../../server/
 import { preparedSet, setOut } from '../support/handOvers'
 import type { Who } from '../support/people'
 import { testShop, type TestShop } from '../support/shop'
+import { addSkiModel } from '../support/things'
 
 type Pair = AnswerOf<typeof getSkiPair>
 
@@ -233,6 +234,16 @@ describe('changing a pair', () => {
       [null, null],
     ])
     expect(after.presetHistory[0]).toMatchObject({ toe: null, reason: 'binding_changed' })
+  })
+
+  it('to another ski model voids its fitting: waist and mounting mark are others', async () => {
+    const set = await preparedSet(shop)
+    const skiModelId = await addSkiModel(shop.db, shop.id, 'Fellwind 88', 88)
+    const before = await pairAs('manager', set.pair.id)
+    const changed = await shop.as('manager').send(changeSkiPair, { ...changeOf(before), skiModelId })
+    expect(changed.status).toBe(201)
+    const [fitting] = await shop.db.select().from(fittings).where(eq(fittings.id, set.fittingId))
+    expect(fitting).toMatchObject({ state: 'void', endReason: 'ski_pair_changed' })
   })
 
   it('that is out to another binding opens a call-back', async () => {

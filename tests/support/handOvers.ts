@@ -170,7 +170,8 @@ async function signRecord(
   return record!.id
 }
 
-async function handOver(db: Db, shop: TestShop, set: TestSet) {
+/** The prepared set leaves. */
+export async function handOver(db: Db, shop: TestShop, set: TestSet) {
   await db.insert(handOvers).values({
     shopId: shop.id,
     siteId: shop.inShop.siteId,
