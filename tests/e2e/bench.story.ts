@@ -16,7 +16,11 @@ test.describe('at the bench', () => {
     const fittingId = await fit(page, shop, boots, pair)
     await page.goto('/bench')
     await expect(page.getByText(/tickets wait/)).toBeVisible()
+    // The scanned ski is the one in hand, and another scan takes the other.
     await scan(page, pair.right)
+    await expect(page.getByText('Right ski, heel').first()).toBeVisible()
+    await scan(page, pair.left)
+    await expect(page.getByText('Left ski, heel').first()).toBeVisible()
     await expect(page.getByText('At which mark does it stand?').first()).toBeVisible()
     const fitting = await ticket(page, fittingId)
     const target = fitting.targets.left.heel

@@ -26,11 +26,14 @@ export function useBenchWork(desk: TicketDesk) {
   const readingElsewhere = ref(false)
   /** A ski that was read and is read once more. */
   const reopened = ref<Side | null>(null)
+  /** A scan opens this ticket; the scanned ski is the one in hand once it is here. */
+  let awaited: { fittingId: string; side: Side } | null = null
 
   watch(
     () => fitting.value?.id,
-    () => {
-      chosen.value = null
+    (id) => {
+      chosen.value = awaited && awaited.fittingId === id ? awaited.side : null
+      if (id) awaited = null
       reopened.value = null
       stepBack()
     },
@@ -78,6 +81,10 @@ export function useBenchWork(desk: TicketDesk) {
     }
     chosen.value = which
     stepBack()
+  }
+  /** Takes a ski in hand as soon as its ticket is open; one that was read stays read. */
+  function chooseOnOpening(fittingId: string, side: Side) {
+    awaited = { fittingId, side }
   }
   function ask(which: ReadStep | CheckStep) {
     const model = target.value?.model
@@ -175,6 +182,7 @@ export function useBenchWork(desk: TicketDesk) {
     complete,
     readingElsewhere,
     choose,
+    chooseOnOpening,
     ask,
     takeRead,
     confirm,
