@@ -29,7 +29,8 @@ export function scaledTo(value: number, places: number): bigint {
   const power = powers[places]
   if (power !== undefined) {
     const scaled = Math.round(value * power)
-    if (Number.isSafeInteger(scaled)) return BigInt(scaled)
+    // The product may have been rounded by half a part: only what divides back is the number itself.
+    if (Number.isSafeInteger(scaled) && scaled / power === value) return BigInt(scaled)
   }
   const { digits, exponent } = written(value)
   return digits * 10n ** BigInt(exponent + places)

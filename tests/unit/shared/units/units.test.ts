@@ -168,6 +168,10 @@ describe('exact arithmetic', () => {
     expect(exactDifference(1e-7, 3e-7)).toBe(-2e-7)
   })
 
+  it('is not misled where a product rounds to half a part', () => {
+    expect(scaledTo(447530865316.7374, 4)).toBe(4475308653167374n)
+  })
+
   it('gives every number back as the same number', () => {
     fc.assert(
       fc.property(fc.double({ noNaN: true, noDefaultInfinity: true, min: -1e200, max: 1e200 }), (value) => {
