@@ -1,8 +1,8 @@
 import { and, eq, isNull } from 'drizzle-orm'
 import type { BodyOf, IdsOf } from '#shared/api/define'
 import type { CorrectedReading, correctRecord } from '#shared/api/callBacks'
-import { isOnRail } from '#shared/track/marks'
 import type { TrackModel } from '#shared/track/trackModel'
+import { malformedPreset } from '#shared/track/trackPlan'
 import {
   bindingModels,
   callBacks,
@@ -78,12 +78,9 @@ async function requireOnRail({ tx }: CommandContext, record: RecordRow, { parts 
   }
 }
 
-function standsOnRail(track: TrackModel, { toe, heel, turns }: CorrectedReading): boolean {
-  const screwFits = track.fineScrew
-    ? turns !== null && Math.abs(turns) <= track.fineScrew.maxTurns
-    : turns === null
-  return isOnRail(track.toe, toe) && isOnRail(track.heel, heel) && screwFits
-}
+/** A correction of a track with a screw says where that stands too. */
+const standsOnRail = (track: TrackModel, reading: CorrectedReading): boolean =>
+  !malformedPreset(track, reading) && (track.fineScrew === null || reading.turns !== null)
 
 async function writeCorrection(context: CommandContext<PersonActor>, record: RecordRow, what: string) {
   const { id: correctsId, recordedAt: _recordedAt, ...facts } = record

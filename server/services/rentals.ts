@@ -5,6 +5,7 @@ import { rentalDays } from '#shared/dates/days'
 import { individualTestFromDays } from '#shared/renters/period'
 import { ageForTable, ageOnFirstDay, formProblems, periodProblems } from '#shared/renters/formRules'
 import type { Period, RenterForm } from '#shared/schemas/renters'
+import { openFittingStates } from '#shared/lifecycle/fittingStates'
 import { dayNumbers, fittings, people, rentals, renters, sites } from '../db/schema/schema'
 import { Problem } from '../errors'
 import { personIdOf, type PersonActor } from './actor'
@@ -146,7 +147,7 @@ export const cancelRentalService: Does<typeof cancelRental> = async (context, { 
   const open = await context.tx
     .select()
     .from(fittings)
-    .where(and(eq(fittings.rentalId, rentalId), inArray(fittings.state, ['claimed', 'prepared'])))
+    .where(and(eq(fittings.rentalId, rentalId), inArray(fittings.state, [...openFittingStates])))
     .orderBy(fittings.id)
     .for('update')
   for (const fitting of open) await endFitting(context, fitting, { state: 'given_back', reason })

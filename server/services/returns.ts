@@ -3,6 +3,7 @@ import type { BodyOf, IdsOf } from '#shared/api/define'
 import type { returnOwnBoots, scanReturn } from '#shared/api/returns'
 import type { ItemKind } from '#shared/lifecycle/itemStates'
 import type { Side } from '#shared/schemas/common'
+import { openFittingStates } from '#shared/lifecycle/fittingStates'
 import { fittings, rentalItems, rentals, returns, stateChanges } from '../db/schema/schema'
 import { Problem } from '../errors'
 import { deviceIdOf, personIdOf, type PersonActor } from './actor'
@@ -166,7 +167,7 @@ async function settleRental(context: CommandContext, rentalId: string) {
   if (stillOut > 0) return
   const openFittings = await tx.$count(
     fittings,
-    and(eq(fittings.rentalId, rentalId), inArray(fittings.state, ['claimed', 'prepared'])),
+    and(eq(fittings.rentalId, rentalId), inArray(fittings.state, [...openFittingStates])),
   )
   await tx
     .update(rentals)

@@ -12,8 +12,9 @@ import type { ProblemParams } from '#shared/errors'
 import { judgeSki, mismatchOf, sameReading, type Mismatch } from '#shared/fitting/readBack'
 import type { Side } from '#shared/schemas/common'
 import { partReading, type SeenReading } from '#shared/schemas/records'
-import { isOnRail, markOf } from '#shared/track/marks'
+import { markOf } from '#shared/track/marks'
 import type { TrackModel } from '#shared/track/trackModel'
+import { malformedPreset, type Preset } from '#shared/track/trackPlan'
 import {
   bindingModels,
   fittingDecisions,
@@ -254,16 +255,8 @@ function requireSeen({ ski }: FoundSki, presetVersion: number) {
   if (ski.presetVersion !== presetVersion) throw new Problem('fittings.preset_moved', { side: ski.side })
 }
 
-function requireOnRail(
-  track: TrackModel,
-  { toe, heel, turns }: { toe: number; heel: number; turns: number | null },
-) {
-  const screw = track.fineScrew
-    ? turns === null || Math.abs(turns) <= track.fineScrew.maxTurns
-    : turns === null
-  if (!isOnRail(track.toe, toe) || !isOnRail(track.heel, heel) || !screw) {
-    throw new Problem('records.not_on_rail')
-  }
+function requireOnRail(track: TrackModel, read: Preset) {
+  if (malformedPreset(track, read)) throw new Problem('records.not_on_rail')
 }
 
 /** A reading moves presets and the queue's notches: item and ticket both are told. */

@@ -3,6 +3,7 @@ import { beforeAll, describe, expect, it } from 'vitest'
 import type { AnswerOf } from '#shared/api/define'
 import { changeBoots } from '#shared/api/boots'
 import { correctRecord, listCallBacks, stepCallBack, type CallBackRow } from '#shared/api/callBacks'
+import type { getRecord } from '#shared/api/records'
 import { scanReturn } from '#shared/api/returns'
 import {
   boots,
@@ -132,6 +133,11 @@ describe('an error found on a record', () => {
     expect(await correct(set.recordId)).toMatchObject({ status: 409, code: 'records.corrected' })
     const second = await correct(first.ids.recordId)
     expect(second.ids.callBackId).toBe(first.ids.callBackId)
+    // whichever of the three somebody opens, it says that the renter signed
+    for (const id of [set.recordId, first.ids.recordId, second.ids.recordId]) {
+      const { body } = await head.get<AnswerOf<typeof getRecord>>(`/api/records/${id}`)
+      expect(body.handOver).toMatchObject({ signedAs: 'renter' })
+    }
   })
 
   it('is corrected once when two people find it at the same moment', async () => {

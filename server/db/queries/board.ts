@@ -1,5 +1,6 @@
 import { and, eq, inArray, isNull, notInArray, sql } from 'drizzle-orm'
 import type { BoardEvent, BoardFitting, BoardItem, BoardRental, BoardSnapshot } from '#shared/schemas/board'
+import { openFittingStates } from '#shared/lifecycle/fittingStates'
 import {
   boots,
   callBacks,
@@ -11,9 +12,7 @@ import {
   skiPairs,
 } from '../schema/schema'
 import type { Reader } from '../../deps'
-
-const iso = (date: Date) => date.toISOString()
-const isoOrNull = (date: Date | null) => date?.toISOString() ?? null
+import { iso, isoOrNull } from './lists'
 
 /**
  * Sides of an item that are still out while the item itself came back. The tables are named by hand: in a select
@@ -74,7 +73,7 @@ async function fittingRows(db: Reader, shopId: string, ids: string[] | 'open'): 
     .where(
       and(
         eq(fittings.shopId, shopId),
-        ids === 'open' ? inArray(fittings.state, ['claimed', 'prepared']) : inArray(fittings.id, ids),
+        ids === 'open' ? inArray(fittings.state, [...openFittingStates]) : inArray(fittings.id, ids),
       ),
     )
   return rows.map((row) => ({

@@ -22,6 +22,7 @@ import {
   ticketHolds,
 } from '../schema/schema'
 import { inputsFact } from './fittingFacts'
+import { iso } from './lists'
 import { bootLabels, decisionFacts, ownBootsFact, shopBootsFact, skiPairFacts } from './fittingParts'
 
 type FittingAnswer = AnswerOf<typeof getFitting>
@@ -29,7 +30,6 @@ type Fitting = typeof fittings.$inferSelect
 
 const clerk = alias(people, 'clerk')
 const holder = alias(people, 'holder')
-const iso = (date: Date) => date.toISOString()
 
 async function fittingRow(db: Reader, shopId: string, id: string) {
   const [row] = await db

@@ -6,6 +6,7 @@ import {
   type FittingFacts,
   type FittingInputsFact,
 } from '#shared/schemas/fittingFacts'
+import { openFittingStates } from '#shared/lifecycle/fittingStates'
 import type { Reader } from '../../deps'
 import { Problem } from '../../errors'
 import { fittingInputs, fittings, people, rentals, renters, shops } from '../schema/schema'
@@ -116,7 +117,7 @@ export async function openFittingOf(db: Reader, rentalId: string): Promise<Fitti
     .select({ fitting: fittings, by: people.name })
     .from(fittings)
     .innerJoin(people, eq(people.id, fittings.claimedBy))
-    .where(and(eq(fittings.rentalId, rentalId), inArray(fittings.state, ['claimed', 'prepared'])))
+    .where(and(eq(fittings.rentalId, rentalId), inArray(fittings.state, [...openFittingStates])))
     .orderBy(desc(fittings.claimedAt))
     .limit(1)
   if (!row) return null

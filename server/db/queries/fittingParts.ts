@@ -10,6 +10,7 @@ import type {
   SkiFact,
   SkiPairFact,
 } from '#shared/schemas/fittingFacts'
+import { openFittingStates } from '#shared/lifecycle/fittingStates'
 import type { Reader } from '../../deps'
 import {
   bindingModels,
@@ -236,7 +237,7 @@ export async function holderOf(db: Reader, shopId: string, itemId: string): Prom
     .where(
       and(
         eq(fittings.shopId, shopId),
-        inArray(fittings.state, ['claimed', 'prepared']),
+        inArray(fittings.state, [...openFittingStates]),
         or(eq(fittings.skiPairId, itemId), eq(fittings.bootsId, itemId)),
       ),
     )

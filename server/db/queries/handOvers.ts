@@ -13,10 +13,7 @@ import {
   shops,
   skiPairs,
 } from '../schema/schema'
-
-/** First name and initial, as it is called out. */
-export const calledName = ({ firstName, lastName }: { firstName: string; lastName: string }) =>
-  lastName ? `${firstName} ${[...lastName][0]}.` : firstName
+import { calledName } from './names'
 
 /** Sets that wait for their renter, those promised first on top. */
 export async function readySets(db: Reader, shopId: string, siteId: string | null): Promise<ReadySet[]> {

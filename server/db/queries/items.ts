@@ -1,6 +1,7 @@
 import { and, asc, desc, eq, inArray, isNull, or } from 'drizzle-orm'
 import type { ItemKind } from '#shared/lifecycle/itemStates'
 import type { HistoryLine, PresetLine } from '#shared/schemas/items'
+import { openFittingStates } from '#shared/lifecycle/fittingStates'
 import type { Reader } from '../../deps'
 import {
   devices,
@@ -127,7 +128,7 @@ export async function openFittingOf(db: Reader, itemId: string) {
     .innerJoin(people, eq(people.id, fittings.claimedBy))
     .where(
       and(
-        inArray(fittings.state, ['claimed', 'prepared']),
+        inArray(fittings.state, [...openFittingStates]),
         or(eq(fittings.skiPairId, itemId), eq(fittings.bootsId, itemId)),
       ),
     )

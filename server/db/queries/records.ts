@@ -83,7 +83,7 @@ export async function recordById(db: Reader, shopId: string, id: string): Promis
     approvedBy: approved ? await approvalOf(db, record) : null,
     decisions: decisions.map(({ kind, reason, by }) => ({ kind, reason, by })),
     parts: await partsOf(db, id),
-    handOver: await handOverOf(db, record.correctsId ?? id),
+    handOver: await handOverOf(db, record.fittingId),
     correctsId: record.correctsId,
     correctionReason: record.correctionReason,
     correctedById: await correctionOf(db, id),
@@ -100,12 +100,13 @@ async function partsOf(db: Reader, recordId: string): Promise<RecordAnswer['part
   return rows.map(({ part, readBy }) => ({ ...part, readBy, readAt: part.readAt.toISOString() }))
 }
 
-async function handOverOf(db: Reader, recordId: string): Promise<RecordAnswer['handOver']> {
+/** What was corrected, however often, was handed over once. */
+async function handOverOf(db: Reader, fittingId: string): Promise<RecordAnswer['handOver']> {
   const [row] = await db
     .select({ handOver: handOvers, name: signatures.signedName, picture: signatures.picture })
     .from(handOvers)
     .leftJoin(signatures, eq(signatures.handOverId, handOvers.id))
-    .where(eq(handOvers.recordId, recordId))
+    .where(eq(handOvers.fittingId, fittingId))
   if (!row) return null
   const { occurredAt, signedAs, textVersion } = row.handOver
   return {

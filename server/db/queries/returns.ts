@@ -9,10 +9,7 @@ import type { Reader } from '../../deps'
 import { Problem } from '../../errors'
 import { boots, fittings, rentalItems, rentals, renters, returns, shops, skiPairs } from '../schema/schema'
 import { iso, isoOrNull } from './lists'
-
-/** First name and initial: enough to greet somebody across a wet desk. */
-const shortName = (renter: { firstName: string; lastName: string } | null) =>
-  renter ? `${renter.firstName} ${renter.lastName ? `${[...renter.lastName][0]}.` : ''}`.trim() : ''
+import { calledName } from './names'
 
 const codeOf = sql<string | null>`coalesce(${skiPairs.code}, ${boots.code})`
 
@@ -84,7 +81,7 @@ async function scansSince(
     stateBefore: scan.stateBefore,
     missing: missingIn(row.state, missing.get(scan.itemId)),
     rentalId: scan.rentalId,
-    renter: scan.rentalId ? shortName(renter) : null,
+    renter: scan.rentalId && renter ? calledName(renter) : null,
     soleLengthReadMm: scan.soleLengthReadMm,
   }))
 }
@@ -145,7 +142,7 @@ async function dueSets(
     )
     .groupBy(rentals.id, renters.id)
     .orderBy(asc(rentals.endsOn), asc(rentals.number))
-  return rows.map((row) => ({ ...row, renter: shortName(row.renter) }))
+  return rows.map((row) => ({ ...row, renter: calledName(row.renter) }))
 }
 
 /** A renter's set with what of it is back. */
@@ -178,7 +175,7 @@ export async function returnSet(db: Reader, shopId: string, rentalId: string): P
   return {
     ...rental,
     state: rental.state as RentalState,
-    renter: shortName(rental.renter),
+    renter: calledName(rental.renter),
     parts: parts.map((part) => ({ ...part, back: part.backAt !== null, backAt: isoOrNull(part.backAt) })),
     ownBoots: await ownBootsRead(db, rentalId),
   }

@@ -17,7 +17,7 @@ import {
   skis,
 } from '../schema/schema'
 import { fittingDetail } from './fittingDetail'
-import { calledName } from './handOvers'
+import { calledName } from './names'
 
 const clerk = alias(people, 'clerk')
 const holder = alias(people, 'holder')
