@@ -17,6 +17,7 @@ export default defineConfig({
   plugins: [vue()],
   test: {
     maxWorkers: 2,
+    setupFiles: ['tests/support/seeded.ts'],
     projects: [
       {
         extends: true,
