@@ -5,16 +5,8 @@ import type { DemoBoots, DemoFleet, DemoPair } from './fleet'
 import { inventRenter, matchFor, type DemoMatch } from './renters'
 import type { Rows } from './rows'
 import { addReturns, completeFitting } from './season'
-import {
-  addArrival,
-  addFitting,
-  addHandOver,
-  addReading,
-  addRecord,
-  move,
-  type DemoShop,
-  type Visit,
-} from './visits'
+import { addHandOver, addReading, addRecord } from './signed'
+import { addArrival, addFitting, move, type DemoShop, type Visit } from './visits'
 
 interface Morning {
   rows: Rows

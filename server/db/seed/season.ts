@@ -4,16 +4,8 @@ import { dayFrom, minute } from './days'
 import type { DemoBoots, DemoFleet, DemoPair } from './fleet'
 import { inventRenter, matchFor, type DemoMatch } from './renters'
 import type { Rows } from './rows'
-import {
-  addArrival,
-  addFitting,
-  addHandOver,
-  addRecord,
-  move,
-  sides,
-  type DemoShop,
-  type Visit,
-} from './visits'
+import { addHandOver, addRecord } from './signed'
+import { addArrival, addFitting, move, sides, type DemoShop, type Visit } from './visits'
 
 const skiSound = {
   edge: 'sound',
