@@ -86,3 +86,28 @@ test('a sheet that was changed binds nobody until a head technician signs it aga
   await head.getByRole('button', { name: 'Sign the sheet' }).click()
   await expect(head.getByText(/^Signed by/)).toBeVisible()
 })
+
+test('two people change one pair: the second is told, though the page behind showed the new state', async ({
+  browser,
+  shop,
+}) => {
+  const [pair] = await shop.sql<{ id: string; code: string }>(
+    `select id, code from ski_pairs where state = 'racked' order by code limit 1`,
+  )
+  const pages = [await signedIn(browser, shop, 'head'), await signedIn(browser, shop, 'manager')]
+  for (const page of pages) {
+    await page.goto(`/fleet/ski-pairs/${pair!.id}`)
+    await page.getByRole('button', { name: 'Change', exact: true }).click()
+  }
+  const [first, second] = pages.map((page) => page.getByRole('dialog'))
+  await first!.getByLabel('Rack place').fill('Q 1')
+  await first!.getByRole('button', { name: 'Save' }).click()
+  await expect(pages[1]!.getByText('Q 1', { exact: true })).toBeVisible()
+  await second!.getByLabel('Rack place').fill('Q 2')
+  await second!.getByRole('button', { name: 'Save' }).click()
+  await expect(second!.getByText('Somebody else changed it meanwhile')).toBeVisible()
+  const [kept] = await shop.sql<{ rack_place: string }>('select rack_place from ski_pairs where id = $1', [
+    pair!.id,
+  ])
+  expect(kept!.rack_place).toBe('Q 1')
+})
