@@ -36,7 +36,6 @@ export const permissions = {
   'tableEdition.approve': head,
   'quarantine.release': head,
   'fleet.retire': head,
-  'corrections.write': head,
   // the fleet's data
   'fleet.write': fleet,
   'callBacks.open': fleet,
@@ -44,7 +43,6 @@ export const permissions = {
   'people.manage': office,
   'devices.manage': office,
   'shop.manage': office,
-  'privacy.manage': office,
 } as const satisfies Record<string, readonly Role[]>
 
 export type Permission = keyof typeof permissions

@@ -6,12 +6,10 @@ import { editions, selectionRows } from '#shared/release/selectionTable'
 import type { ReleaseOutcome } from '#shared/schemas/fittings'
 import { rowStepsOf } from './rowSteps'
 
-/** A head technician's value stays within this many rows of the computed one. */
-export const decidedRowsAtMost = 2
 /** More rows up than this need a second name. */
 export const secondNameAboveRows = 1
 
-/** Rows from the computed one, positive is a higher value. */
+/** A head technician's value stays within two rows of the computed one; positive is a higher value. */
 export const decidableRows = [-2, -1, 1, 2] as const
 export type DecidedRows = (typeof decidableRows)[number]
 

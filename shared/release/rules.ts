@@ -75,4 +75,3 @@ export const ruleStandings = {
       'rules text printed with a release-value chart; never up or down a row: from memory; to the right of the values a head technician decides',
   },
 } as const satisfies Record<string, Standing>
-export type RuleName = keyof typeof ruleStandings

@@ -93,7 +93,6 @@ export const bindingFact = z.object({
   windowNote: z.string(),
   hasWindowPicture: z.boolean(),
 })
-export type BindingFact = z.infer<typeof bindingFact>
 
 export const skiPairFact = z.object({
   id,

@@ -66,7 +66,6 @@ export type ValueSource = z.infer<typeof valueSource>
 export const draftFields = z
   .record(z.string().regex(/^[a-zA-Z]{1,40}$/), z.string().max(500))
   .refine((fields) => Object.keys(fields).length <= 60)
-export type DraftFields = z.infer<typeof draftFields>
 
 /** A renter's inputs as the staff sees them, with who measured what. */
 export const renterInputs = z.object({

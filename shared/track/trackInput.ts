@@ -11,4 +11,3 @@ export const trackInputSchema = z.strictObject({
   offsetMm: z.number().min(offsetMm.min).max(offsetMm.max).optional(),
   current: z.strictObject({ toe: z.int(), heel: z.int(), turns: z.number().optional() }).optional(),
 })
-export type TrackInput = z.infer<typeof trackInputSchema>

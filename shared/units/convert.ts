@@ -40,8 +40,6 @@ export const kgOf = (mass: Mass): number => double(kilograms(mass))
 export const lbOf = (mass: Mass): number => double(pounds(mass))
 /** Height in cm, unrounded. */
 export const cmOf = (height: Height): number => double(centimetres(height))
-/** Height in inches, unrounded. */
-export const inchesOf = (height: Height): number => double(inches(height))
 
 /** The same mass or height in the other system of units, unrounded. */
 export function inOtherSystem(body: Mass): Mass
