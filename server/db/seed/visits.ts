@@ -28,6 +28,9 @@ export interface Visit {
   arrivedAt: Date
 }
 
+/** The shoe size that goes with a foot, in Paris points of two thirds of a centimetre (common practice, no source). */
+const euSize = (mondo: number) => String(Math.round((mondo / 10 + 1.5) * 1.5))
+
 /** Renter, inputs and rental, as the form and the desk leave them. */
 export function addArrival(
   rows: Rows,
@@ -90,6 +93,7 @@ export function addArrival(
     startsOn: visit.days.from,
     endsOn: visit.days.to,
     ownBoots: false,
+    shoe: chance.happens(0.85) ? { size: euSize(renter.mondo), system: 'eu' } : null,
     wishes: '',
     arrivedAt,
     promisedAt: new Date(arrivedAt.getTime() + (visit.promiseMinutes ?? 20) * minute),
