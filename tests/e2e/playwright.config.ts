@@ -6,8 +6,8 @@ export default defineConfig({
   outputDir: '../../.cache/e2e',
   workers: 1,
   retries: 0,
-  timeout: 60_000,
-  expect: { timeout: 10_000 },
+  timeout: 120_000,
+  expect: { timeout: 20_000 },
   globalSetup: './globalSetup.ts',
   reporter: [['list'], ['json']],
   use: {
