@@ -2,26 +2,21 @@ import { and, eq, sql } from 'drizzle-orm'
 import type { changeBoots, createBoots } from '#shared/api/boots'
 import type { BodyOf, IdsOf } from '#shared/api/define'
 import { labelFor } from '#shared/labels/labels'
-import { boots, labels, sites } from '../db/schema/schema'
-import type { Tx } from '../deps'
+import { boots, labels } from '../db/schema/schema'
 import { isDuplicate, Problem } from '../errors'
 import type { PersonActor } from './actor'
 import type { Service } from './commands'
 import { doubtFittings } from './doubt'
 import { changedFields, noteOfficeChange } from './office'
 import { lockOpenFittingOf } from './openFittings'
+import { requireSite } from './shops'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
-
-async function requireOwnSite(tx: Tx, shopId: string, siteId: string) {
-  if (!(await tx.$count(sites, and(eq(sites.id, siteId), eq(sites.shopId, shopId)))))
-    throw new Problem('items.unknown')
-}
 
 export const createBootsService: Does<typeof createBoots> = async (context, body) => {
   const { tx, actor } = context
   const { shopId } = actor
-  await requireOwnSite(tx, shopId, body.homeSiteId)
+  await requireSite(tx, shopId, body.homeSiteId)
   try {
     const [row] = await tx
       .insert(boots)
@@ -61,7 +56,7 @@ export const changeBootsService: Does<typeof changeBoots> = async (context, { id
   if (!before) throw new Problem('items.unknown')
   if (before.state === 'quarantine') throw new Problem('items.held', { code: before.code })
   if (before.version !== version) throw new Problem('items.changed', { code: before.code })
-  await requireOwnSite(tx, actor.shopId, values.homeSiteId)
+  await requireSite(tx, actor.shopId, values.homeSiteId)
   const otherSole = values.soleLengthMm !== before.soleLengthMm || values.soleType !== before.soleType
   if (otherSole) await doubtFittings(context, { bootsId: id }, 'sole_changed')
   const now = { ...values, rackPlace: values.rackPlace || null }

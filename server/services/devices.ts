@@ -10,6 +10,7 @@ import type { PersonActor } from './actor'
 import type { Service } from './commands'
 import { noteOfficeChange } from './office'
 import { endSessionsAt } from './sessions'
+import { requireSite } from './shops'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
@@ -43,8 +44,7 @@ export async function enrolDevice(
 ): Promise<{ deviceId: string; token: string }> {
   const token = newToken()
   const deviceId = await deps.db.transaction(async (tx) => {
-    const known = await tx.$count(sites, and(eq(sites.id, siteId), eq(sites.shopId, actor.shopId)))
-    if (known === 0) throw new Problem('sites.unknown')
+    await requireSite(tx, actor.shopId, siteId)
     if (actor.deviceId) {
       await tx.update(devices).set({ revokedAt: deps.now() }).where(eq(devices.id, actor.deviceId))
     }

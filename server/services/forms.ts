@@ -21,9 +21,9 @@ import type { Deps } from '../deps'
 import { Problem } from '../errors'
 import type { LinkActor, PersonActor } from './actor'
 import type { CommandContext, Service } from './commands'
-import { addRental, requireSite, usableForm } from './rentals'
+import { addRental, usableForm } from './rentals'
 import { addInputs, carriedRequest, contactColumns, lockRental, replaceInputs } from './renters'
-import { shopById, shopDay } from './shops'
+import { requireSite, shopById, shopDay } from './shops'
 import { sentencesReviewed } from './texts'
 
 /** A link lives until the shop's day after tomorrow begins, or the day after the rental ends. */
@@ -33,8 +33,8 @@ type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
 /** The code at the door of a site, until the shop's day is over. */
 export const openDoorService: Does<typeof openDoor> = async (context, { siteId, token }) => {
-  await requireSite(context, siteId)
   const { tx, actor, deps } = context
+  await requireSite(tx, actor.shopId, siteId)
   const { zone } = await shopById(tx, actor.shopId)
   const [row] = await tx
     .insert(doorLinks)
@@ -51,7 +51,7 @@ export const openDoorService: Does<typeof openDoor> = async (context, { siteId, 
 
 /** Every code at a site's door ends now; who has begun a form keeps it. */
 export const closeDoorService: Does<typeof closeDoor> = async (context, { siteId }) => {
-  await requireSite(context, siteId)
+  await requireSite(context.tx, context.actor.shopId, siteId)
   await context.tx
     .update(doorLinks)
     .set({ revokedAt: context.deps.now() })
@@ -69,8 +69,8 @@ export const makeFormLinkService: Does<typeof makeFormLink> = async (
   context,
   { siteId, token, rentalId },
 ) => {
-  await requireSite(context, siteId)
   const { tx, actor, deps } = context
+  await requireSite(tx, actor.shopId, siteId)
   const { zone } = await shopById(tx, actor.shopId)
   const rental = rentalId ? (await lockRental(context, rentalId)).rental : null
   if (rental && rental.state !== 'waiting' && rental.state !== 'open')

@@ -6,7 +6,7 @@ import { individualTestFromDays } from '#shared/renters/period'
 import { ageForTable, ageOnFirstDay, formProblems, periodProblems } from '#shared/renters/formRules'
 import type { Period, RenterForm } from '#shared/schemas/renters'
 import { openFittingStates } from '#shared/lifecycle/fittingStates'
-import { dayNumbers, fittings, people, rentals, renters, sites } from '../db/schema/schema'
+import { dayNumbers, fittings, people, rentals, renters } from '../db/schema/schema'
 import { Problem } from '../errors'
 import { personIdOf, type PersonActor } from './actor'
 import type { CommandContext, Service } from './commands'
@@ -21,7 +21,7 @@ import {
   saidBy,
   type InputValues,
 } from './renters'
-import { shopById, shopDay } from './shops'
+import { requireSite, shopById, shopDay } from './shops'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
@@ -46,7 +46,7 @@ export async function addRental(
   const { tx, actor } = context
   const { siteId, state, arrivedAt, sources } = arrival
   const { shop, age } = await usableForm(context, form)
-  await requireSite(context, siteId)
+  await requireSite(tx, shop.id, siteId)
   const [renter] = await tx
     .insert(renters)
     .values({ shopId: shop.id, ...contactColumns(form), birthDate: form.birthDate })
@@ -78,13 +78,6 @@ export async function addRental(
     .returning({ id: rentals.id })
   context.touchRental(rental!.id)
   return { rentalId: rental!.id, renterId }
-}
-
-/** A site of this shop. */
-export async function requireSite(context: CommandContext, siteId: string) {
-  const { shopId } = context.actor
-  const own = await context.tx.$count(sites, and(eq(sites.id, siteId), eq(sites.shopId, shopId)))
-  if (own === 0) throw new Problem('sites.unknown')
 }
 
 /** The next short number of the day. */

@@ -28,6 +28,12 @@ export async function lockShop(tx: Tx, shopId: string) {
   return shop
 }
 
+/** Refuses a site that is not of this shop. */
+export async function requireSite(tx: Tx, shopId: string, siteId: string) {
+  const own = await tx.$count(sites, and(eq(sites.id, siteId), eq(sites.shopId, shopId)))
+  if (own === 0) throw new Problem('sites.unknown')
+}
+
 /** The shop's day now. */
 export const shopDay = (shop: { zone: string }, now: Date) => dayInZone(now, shop.zone)
 

@@ -2,7 +2,7 @@ import { and, eq, sql } from 'drizzle-orm'
 import type { changeSkiPair, createSkiPair, readPreset } from '#shared/api/skiPairs'
 import type { BodyOf, IdsOf } from '#shared/api/define'
 import { labelFor } from '#shared/labels/labels'
-import { bindingModels, labels, sites, skiModels, skiPairs, skis } from '../db/schema/schema'
+import { bindingModels, labels, skiModels, skiPairs, skis } from '../db/schema/schema'
 import type { Tx } from '../deps'
 import { isDuplicate, Problem } from '../errors'
 import type { PersonActor } from './actor'
@@ -11,6 +11,7 @@ import { doubtFittings } from './doubt'
 import { changedFields, noteOfficeChange } from './office'
 import { lockOpenFittingOf } from './openFittings'
 import { forgetPresets, skiWithTrack, writePreset } from './presets'
+import { requireSite } from './shops'
 import { lockItem } from './stateChanges'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
@@ -25,9 +26,9 @@ async function requireOwn(tx: Tx, shopId: string, { skiModelId, bindingModelId, 
       bindingModels,
       and(eq(bindingModels.id, bindingModelId), eq(bindingModels.shopId, shopId)),
     ),
-    await tx.$count(sites, and(eq(sites.id, homeSiteId), eq(sites.shopId, shopId))),
   ]
   if (own.some((count) => count === 0)) throw new Problem('items.unknown')
+  await requireSite(tx, shopId, homeSiteId)
 }
 
 export const createSkiPairService: Does<typeof createSkiPair> = async (context, body) => {

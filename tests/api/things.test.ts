@@ -97,14 +97,13 @@ describe('who writes the fleet', () => {
     expect((await me.get(`/api/ski-pairs/${pair.id}`)).code).toBe('items.unknown')
     expect((await me.get(`/api/boots/${boots.id}`)).code).toBe('items.unknown')
     const theirs = [
-      { skiModelId: await other.skiModel() },
-      { bindingModelId: await other.bindingModel('ladder-16') },
-      { homeSiteId: other.sites.lower },
-    ]
-    for (const values of theirs) {
-      expect((await me.send(createSkiPair, await pairBody({ code: 'S777', ...values }))).code).toBe(
-        'items.unknown',
-      )
+      [{ skiModelId: await other.skiModel() }, 'items.unknown'],
+      [{ bindingModelId: await other.bindingModel('ladder-16') }, 'items.unknown'],
+      [{ homeSiteId: other.sites.lower }, 'sites.unknown'],
+    ] as const
+    for (const [values, code] of theirs) {
+      const made = await me.send(createSkiPair, await pairBody({ code: 'S777', ...values }))
+      expect([made.status, made.code]).toEqual([404, code])
     }
     const changed = await me.send(changeBoots, { ...bootsWithoutCode(), id: boots.id, version: 1 })
     expect(changed.code).toBe('items.unknown')
