@@ -2,8 +2,9 @@ import { date, index, integer, jsonb, pgTable, text, uniqueIndex, uuid } from 'd
 import { sql } from 'drizzle-orm'
 import type { InspectionChecks } from '#shared/schemas/inspections'
 import { id, instant, millimetres, now } from '../columns'
-import { fittingRecords, fittings } from './fittings'
+import { fittings } from './fittings'
 import { people } from './people'
+import { fittingRecords } from './records'
 import { rentals } from './renters'
 import { shops, sites } from './shops'
 
