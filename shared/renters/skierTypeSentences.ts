@@ -14,10 +14,10 @@ export const skierTypeSentences: Readonly<Record<'en' | 'de', Readonly<Record<Sk
     'III+': 'Very fast, and it should hold longer than is usual',
   },
   de: {
-    'I-': 'Sehr vorsichtig: Sie darf lieber einmal zu oft aufgehen',
+    'I-': 'Sehr vorsichtig: Die Bindung darf lieber einmal zu oft aufgehen',
     I: 'Langsam und bedacht, auf leichten Pisten',
     II: 'In mittlerem Tempo, auf den meisten Pisten',
     III: 'Schnell und mit Kraft, auch im Steilen',
-    'III+': 'Sehr schnell, und sie soll länger halten als üblich',
+    'III+': 'Sehr schnell, und die Bindung soll länger halten als üblich',
   },
 }
