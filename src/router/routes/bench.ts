@@ -19,7 +19,12 @@ export const benchRoutes: RouteRecordRaw[] = [
     name: 'record-print',
     component: () => import('../../views/RecordPrintView.vue'),
     props: true,
-    meta: { layout: 'print', permission: 'renters.read', texts: ['record'], title: 'record.title' },
+    meta: {
+      layout: 'print',
+      permission: 'renters.read',
+      texts: ['record', 'callBacks'],
+      title: 'record.title',
+    },
   },
   {
     path: '/hand-over/:fittingId?',
