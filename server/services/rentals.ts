@@ -22,6 +22,7 @@ import {
   type InputValues,
 } from './renters'
 import { requireSite, shopById, shopDay } from './shops'
+import { currentText, requireUsable } from './texts'
 
 type Does<C> = Service<BodyOf<C>, IdsOf<C>, PersonActor>
 
@@ -47,6 +48,8 @@ export async function addRental(
   const { siteId, state, arrivedAt, sources } = arrival
   const { shop, age } = await usableForm(context, form)
   await requireSite(tx, shop.id, siteId)
+  // The way of skiing is chosen by sentences: a real shop uses none that nobody of it signed.
+  await requireUsable(tx, shop.id, await currentText(tx, shop.id, 'skier_types', form.locale))
   const [renter] = await tx
     .insert(renters)
     .values({ shopId: shop.id, ...contactColumns(form), birthDate: form.birthDate })

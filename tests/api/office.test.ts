@@ -1,3 +1,5 @@
+import { createRental } from '#shared/api/rentals'
+import { filledForm } from '../support/forms'
 import { beforeAll, describe, expect, test } from 'vitest'
 import { eq } from 'drizzle-orm'
 import type { AnswerOf } from '#shared/api/define'
@@ -132,7 +134,7 @@ describe('texts', () => {
     const kept = await fresh.db.select().from(shopTexts).where(eq(shopTexts.shopId, fresh.id))
     expect(
       kept
-        .filter(({ locale }) => locale === 'en')
+        .filter(({ kind, locale }) => kind === 'acknowledgement' && locale === 'en')
         .map(({ version }) => version)
         .sort(),
     ).toEqual([1, 2])
@@ -146,8 +148,24 @@ describe('texts', () => {
     await fresh.as('manager').send(reviewText, { kind, locale, sha256 })
     await fresh.as('manager').send(reviewText, { kind, locale, sha256 })
     const kept = await fresh.db.select().from(shopTexts).where(eq(shopTexts.kind, 'skier_types'))
-    expect(kept.filter(({ shopId }) => shopId === fresh.id)).toHaveLength(1)
+    expect(kept.filter(({ shopId, locale: of }) => shopId === fresh.id && of === 'de')).toHaveLength(1)
     expect((await text(fresh, 'skier_types', 'de')).current.reviewed?.by).toBe(fresh.people.manager.name)
+  })
+
+  test('a real shop takes nobody in by sentences that nobody of it signed', async () => {
+    const fresh = await unsigned()
+    const body = {
+      siteId: fresh.sites.lower,
+      form: filledForm(),
+      massSource: 'measured' as const,
+      heightSource: 'declared' as const,
+      skierTypeByRenter: true as const,
+    }
+    expect((await fresh.as('counter').send(createRental, body)).code).toBe('texts.unreviewed')
+    const { current } = await text(fresh, 'skier_types')
+    const { kind, locale, sha256 } = current
+    await fresh.as('manager').send(reviewText, { kind, locale, sha256 })
+    expect((await fresh.as('counter').send(createRental, body)).status).toBe(201)
   })
 
   test('ten wordings sent at once get ten versions', async () => {

@@ -7,6 +7,9 @@ import { RULES_VERSION } from '#shared/release/rules'
 import { deviceCookie, pinHeader } from '../../server/auth/actors'
 import { shopTexts, tableApprovals } from '../../server/db/schema/schema'
 import { testApp, type TestApp } from './app'
+import { textLocales } from '#shared/api/shop'
+import { productText } from '../../server/services/defaultTexts'
+import { textSha256 } from '../../server/services/texts'
 import { addShop, addStaff, enrolDevice, testPassword, type Who } from './people'
 import { addFitting, addRental, type RentalValues, type TestRental } from './rentals'
 import {
@@ -120,6 +123,11 @@ export async function shopIn(app: TestApp, name: string) {
 async function signTexts(db: TestApp['database']['db'], shopId: string, personId: string) {
   const reviewed = { reviewedBy: personId, reviewedAt: new Date() }
   await db.update(shopTexts).set(reviewed).where(eq(shopTexts.shopId, shopId))
+  const sentences = textLocales.map((locale) => {
+    const body = productText('skier_types', locale)
+    return { shopId, kind: 'skier_types', locale, version: 1, body, sha256: textSha256(body), ...reviewed }
+  })
+  await db.insert(shopTexts).values(sentences)
 }
 
 function person(agentOf: () => Promise<ReturnType<typeof supertest.agent>>): Person {
