@@ -38,7 +38,7 @@ describe('the description of the API', () => {
 
   test('says of every route who may call it and what a refusal looks like', () => {
     for (const operation of Object.values(description.paths).flatMap((path) => Object.values(path))) {
-      expect(operation['x-access']).toBeTruthy()
+      expect(operation['x-access']).toMatch(/^[a-z_]+(\.[a-z]+)?$/i)
       expect(operation.responses.default?.content).toHaveProperty(['application/problem+json'])
     }
     expect(description.components.schemas.Problem.properties.code.enum).toEqual(Object.keys(problems))
