@@ -41,7 +41,7 @@ export const demoStaff: DemoPerson[] = [
     key: 'bench',
     name: 'Sefu Quorra',
     roles: ['technician', 'counter'],
-    locale: 'de',
+    locale: 'en',
     password: 'tarnside-bench',
     pin: '440044',
   },
